@@ -1,0 +1,117 @@
+package astro
+
+import (
+	"math"
+
+	"github.com/soniakeys/meeus/v3/moonposition"
+	"github.com/soniakeys/unit"
+
+	"gloam/astro/internal/vsop87"
+)
+
+// Place is a body's apparent geocentric place and look.
+type Place struct {
+	GHA         unit.Angle // Greenwich hour angle, westward, [0°, 360°)
+	Dec         unit.Angle // declination, north positive, [-90°, 90°]
+	HP          unit.Angle // horizontal parallax at the equator; 0 for stars
+	SD          unit.Angle // geocentric semidiameter; 0 for stars
+	Magnitude   float64    // visual; 0 for Aries
+	Illuminated float64    // lit part of the disc, 0 to 1; 1 for Sun and stars
+}
+
+// equatorAU is the Earth's equatorial radius in AU.
+const equatorAU = 6378.137 / 149597870.7
+
+// Semidiameters at one AU (Sun: Auwers, as in Meeus ch. 55; planets: mean
+// radii of IAU WGCCRE 2015), and the Moon's as a part of its parallax.
+var semidiameters = [...]float64{
+	Sun: 959.63 * arcsecond, Venus: 8.344 * arcsecond, Mars: 4.683 * arcsecond,
+	Jupiter: 96.39 * arcsecond, Saturn: 80.29 * arcsecond,
+}
+
+const moonRadius = 0.2724 // of the Earth's
+
+// Place gives the apparent place of a body. For Aries only GHA and Dec mean
+// anything. Accuracy, 2000-2049, as measured against the JPL ephemeris DE431:
+// see the README.
+func (m *Moment) Place(b Body) Place {
+	switch b.Class() {
+	case ClassPoint:
+		return Place{GHA: unit.Angle(m.gast).Mod1()}
+	case ClassMoon:
+		return m.moon()
+	case ClassStar:
+		return m.star(&catalogue()[b-firstStar])
+	case ClassSun:
+		return m.sun()
+	}
+	return m.planet(b)
+}
+
+// place sets hour angle and declination from a direction on the true equator.
+func (m *Moment) place(direction vector) Place {
+	ra, dec := direction.lonLat()
+	return Place{GHA: m.hourAngle(ra), Dec: unit.Angle(dec), Illuminated: 1}
+}
+
+func (m *Moment) sun() Place {
+	r := m.earth.norm()
+	p := m.place(m.npb.apply(m.aberrate(m.earth.scale(-1 / r))))
+	p.HP, p.SD = parallax(r), unit.Angle(semidiameters[Sun]/r)
+	p.Magnitude = sunMagnitude + 5*math.Log10(r)
+	return p
+}
+
+func (m *Moment) planet(b Body) Place {
+	sun, earth, distance := m.heliocentric(b)
+	p := m.place(m.apparent(earth, sun.unit()))
+	p.HP, p.SD = parallax(distance), unit.Angle(semidiameters[b]/distance)
+	r, phase := sun.norm(), math.Acos(sun.unit().dot(earth))
+	p.Illuminated = (1 + cos(phase)) / 2
+	p.Magnitude = planetMagnitude(b, phase/degree, earth) + 5*math.Log10(r*distance)
+	return p
+}
+
+var theories = [...]vsop87.Planet{Venus: vsop87.Venus, Mars: vsop87.Mars, Jupiter: vsop87.Jupiter, Saturn: vsop87.Saturn}
+
+// heliocentric gives a planet's place from the Sun when the light left it
+// (AU), its direction from the Earth, and its distance from the Earth (AU).
+// Over the light time the planet is taken to move straight on, which for these
+// four is true to 2 km.
+func (m *Moment) heliocentric(b Body) (sun, earth vector, distance float64) {
+	place, velocity := theories[b].PlaceVelocity(m.tt / 365250)
+	now, speed := fromEcliptic.apply(vector(place)), fromEcliptic.apply(vector(velocity))
+	sun = now
+	for range 2 {
+		distance = sun.sub(m.earth).norm()
+		sun = now.sub(speed.scale(distance * lightDayPerAU))
+	}
+	return sun, sun.sub(m.earth).unit(), distance
+}
+
+func (m *Moment) star(s *star) Place {
+	direction := s.place.add(s.motion.scale(m.tt / 365.25)).sub(m.earth.scale(s.parallax)).unit()
+	p := m.place(m.apparent(direction, direction))
+	p.Magnitude = s.magnitude
+	return p
+}
+
+func (m *Moment) moon() Place {
+	lon, lat, km := moonposition.Position(m.tt + 2451545)
+	direction := rotX(-m.obliq).apply(spherical(lon.Rad()+m.dpsi, lat.Rad()))
+	p := m.place(direction)
+	p.HP = moonposition.Parallax(km)
+	p.SD = p.HP.Mul(moonRadius)
+	phase := m.moonPhaseAngle(direction, km/149597870.7)
+	p.Illuminated = (1 + cos(phase)) / 2
+	p.Magnitude = moonMagnitude(phase/degree, km)
+	return p
+}
+
+// moonPhaseAngle is the angle at the Moon between Sun and Earth.
+func (m *Moment) moonPhaseAngle(moon vector, distance float64) float64 {
+	toSun := m.npb.apply(m.earth).scale(-1).sub(moon.scale(distance))
+	return math.Acos(toSun.unit().dot(moon.scale(-1)))
+}
+
+func parallax(distance float64) unit.Angle { return unit.Angle(math.Asin(equatorAU / distance)) }

@@ -1,0 +1,285 @@
+package main
+
+import (
+	"bytes"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+	"strconv"
+	"time"
+
+	"github.com/soniakeys/unit"
+	"github.com/spf13/cobra"
+	"golang.org/x/term"
+
+	"gloam/calendars"
+	"gloam/plan"
+	"gloam/track"
+)
+
+// planFlags are what the command line says of a plan.
+type planFlags struct {
+	depart, sailing                     string
+	speed, eye, index                   float64
+	temperature, pressure               float64
+	lowest, highest, sunUpper, sunLower float64
+	sightError, commonError             float64
+	alarm                               time.Duration
+	ics, json                           string
+	changed                             func(string) bool
+}
+
+func newPlan(w world) *cobra.Command {
+	f := &planFlags{}
+	cmd := &cobra.Command{
+		Use:   "plan ROUTE",
+		Short: "Plan the star sights of a passage",
+		Long: "Reads a route (GeoJSON; - for standard input) and prints the plan: for each\n" +
+			"ship's date the twilights, the windows for star sights, the triads that give\n" +
+			"the best fix and what to set on the sextant. Flags win over the file's\n" +
+			"properties name, departure, speed_kn, sailing and eye_m.",
+		Example: "  gloam plan route.geojson --depart 2026-11-20T12:00Z --speed 6.5 --ics plan.ics",
+		Args:    func(cmd *cobra.Command, args []string) error { return usage(cobra.ExactArgs(1)(cmd, args)) },
+		RunE: func(cmd *cobra.Command, args []string) error {
+			f.changed = cmd.Flags().Changed
+			return f.run(args[0], w)
+		},
+		ValidArgsFunction: func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
+			return []string{"geojson", "json"}, cobra.ShellCompDirectiveFilterFileExt
+		},
+	}
+	f.define(cmd)
+	return cmd
+}
+
+func (f *planFlags) define(cmd *cobra.Command) {
+	set, flags := plan.DefaultSettings(), cmd.Flags()
+	flags.SortFlags = false
+	flags.StringVar(&f.depart, "depart", "", "departure, UTC or with a zone: 2026-11-20T12:00Z")
+	flags.Float64Var(&f.speed, "speed", 0, "speed made good, knots")
+	flags.StringVar(&f.sailing, "sailing", "rhumb", "rhumb or great-circle")
+	flags.Float64Var(&f.eye, "eye", set.EyeM, "height of eye, metres")
+	flags.Float64Var(&f.index, "index-error", 0, "index error in minutes, on the arc positive")
+	flags.Float64Var(&f.temperature, "temperature", set.TemperatureC, "air, degrees Celsius")
+	flags.Float64Var(&f.pressure, "pressure", set.PressureHPa, "air, hectopascals")
+	flags.Float64Var(&f.lowest, "lowest", set.LowestAltitude.Deg(), "lowest altitude of a body to shoot, degrees")
+	flags.Float64Var(&f.highest, "highest", set.HighestAltitude.Deg(), "highest altitude of a body to shoot, degrees")
+	flags.Float64Var(&f.sunUpper, "sun-upper", set.UpperSun.Deg(), "Sun's altitude at the bright end of a window, degrees")
+	flags.Float64Var(&f.sunLower, "sun-lower", set.LowerSun.Deg(), "Sun's altitude at the dark end of a window, degrees")
+	flags.Float64Var(&f.sightError, "sight-error", set.SightError.Min(), "standard error of one sight, minutes")
+	flags.Float64Var(&f.commonError, "common-error", set.CommonError.Min(), "standard error common to all sights of a window, minutes")
+	flags.DurationVar(&f.alarm, "alarm", 20*time.Minute, "calendar alarm before each window; 0 for none")
+	flags.StringVar(&f.ics, "ics", "", "write the calendar to this file (- for standard output, alone)")
+	flags.StringVar(&f.json, "json", "", "write the plan as JSON to this file (- for standard output, alone)")
+	_ = cmd.RegisterFlagCompletionFunc("sailing", cobra.FixedCompletions([]string{"rhumb", "great-circle"}, cobra.ShellCompDirectiveNoFileComp))
+}
+
+// run makes the plan, then writes the files, then prints the text.
+func (f *planFlags) run(file string, w world) error {
+	if err := f.check(file); err != nil {
+		return err
+	}
+	stamp, err := stampTime(w)
+	if err != nil {
+		return err
+	}
+	route, err := readRoute(file, w.in)
+	if err != nil {
+		return err
+	}
+	p, err := f.plan(file, route)
+	if err != nil {
+		return err
+	}
+	outputs, err := f.outputs(p, stamp, w)
+	if err != nil {
+		return err
+	}
+	return writeAll(outputs, w.out)
+}
+
+// check refuses outputs that would overwrite each other or the route.
+func (f *planFlags) check(route string) error {
+	switch {
+	case f.alarm < 0:
+		return usage(fmt.Errorf("--alarm %v (0 or more, as 20m)", f.alarm))
+	case f.ics != "" && filepath.Clean(f.ics) == filepath.Clean(f.json):
+		return usage(errors.New("--ics and --json name the same output"))
+	}
+	for flag, path := range map[string]string{"--ics": f.ics, "--json": f.json} {
+		if sameFile(path, route) {
+			return usage(fmt.Errorf("%s names the route file, which would be lost", flag))
+		}
+	}
+	return nil
+}
+
+func sameFile(a, b string) bool {
+	ia, errA := os.Stat(a)
+	ib, errB := os.Stat(b)
+	return errA == nil && errB == nil && ia.Mode().IsRegular() && os.SameFile(ia, ib)
+}
+
+// stampTime is the time put into calendars: SOURCE_DATE_EPOCH, or the clock's.
+func stampTime(w world) (time.Time, error) {
+	text := w.env("SOURCE_DATE_EPOCH")
+	if text == "" {
+		return w.now().UTC(), nil
+	}
+	seconds, err := strconv.ParseInt(text, 10, 64)
+	if err != nil || seconds < 0 || seconds > track.Latest.Unix() {
+		return time.Time{}, fmt.Errorf("SOURCE_DATE_EPOCH: %q (seconds since 1970)", text)
+	}
+	return time.Unix(seconds, 0).UTC(), nil
+}
+
+func readRoute(file string, stdin io.Reader) (*track.Route, error) {
+	in := stdin
+	if file != "-" {
+		f, err := os.Open(file)
+		if err != nil {
+			var p *os.PathError
+			if errors.As(err, &p) {
+				err = p.Err
+			}
+			return nil, hinted{&fileError{file, err}, "name a GeoJSON file with the route to sail"}
+		}
+		defer f.Close()
+		in = f
+	}
+	route, err := track.ReadGeoJSON(in)
+	if err != nil {
+		return nil, &fileError{file, err}
+	}
+	return route, nil
+}
+
+// plan joins flags and file; flags win.
+func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
+	passage, err := f.sail(file, r)
+	if err != nil {
+		return nil, err
+	}
+	set := f.settings(r)
+	p, err := plan.New(passage, set)
+	if err != nil {
+		return nil, err
+	}
+	p.Notes = r.Notes
+	return p, nil
+}
+
+func (f *planFlags) sail(file string, r *track.Route) (*track.Passage, error) {
+	departure, speed, how := r.Departure, r.SpeedKn, track.Rhumb
+	var err error
+	if r.Sailing != nil {
+		how = *r.Sailing
+	}
+	if f.changed("depart") {
+		if departure, err = parseInstant(f.depart); err != nil {
+			return nil, usage(fmt.Errorf("--depart %w", err))
+		}
+	}
+	if f.changed("sailing") {
+		if how, err = track.ParseSailing(f.sailing); err != nil {
+			return nil, usage(fmt.Errorf("--%w", err))
+		}
+	}
+	if f.changed("speed") {
+		speed = f.speed
+	}
+	switch {
+	case departure.IsZero():
+		err = missing("departure", "RFC 3339, as 2026-11-20T12:00:00Z", "give --depart, or the property departure of the line")
+	case speed == 0 && !f.changed("speed"):
+		err = missing("speed", "knots", "give --speed, or the property speed_kn of the line")
+	}
+	if err != nil {
+		return nil, &fileError{file, err}
+	}
+	p, err := r.Sail(departure, speed, how)
+	if err != nil {
+		return nil, f.blame(file, err)
+	}
+	return p, nil
+}
+
+func missing(place, allowed, hint string) error {
+	return &track.Error{Place: place, Met: "missing", Allowed: allowed, Hint: hint}
+}
+
+// blame puts an error of the passage to the flag that brought the value, or
+// to the file.
+func (f *planFlags) blame(file string, err error) error {
+	var t *track.Error
+	if errors.As(err, &t) {
+		for place, flag := range map[string]string{"departure": "depart", "speed": "speed"} {
+			if t.Place == place && f.changed(flag) {
+				t.Place = "--" + flag
+				return t
+			}
+		}
+	}
+	return &fileError{file, err}
+}
+
+// parseInstant reads RFC 3339, the seconds of which may be left out.
+func parseInstant(text string) (time.Time, error) {
+	for _, layout := range []string{time.RFC3339, "2006-01-02T15:04Z07:00"} {
+		if t, err := time.Parse(layout, text); err == nil {
+			return t, nil
+		}
+	}
+	return time.Time{}, fmt.Errorf("%q (a time with its zone, as 2026-11-20T12:00Z)", text)
+}
+
+func (f *planFlags) settings(r *track.Route) plan.Settings {
+	set := plan.DefaultSettings()
+	set.EyeM = f.eye
+	if r.EyeM > 0 && !f.changed("eye") {
+		set.EyeM = r.EyeM
+	}
+	set.IndexError = unit.AngleFromMin(f.index)
+	set.TemperatureC, set.PressureHPa = f.temperature, f.pressure
+	set.LowestAltitude, set.HighestAltitude = unit.AngleFromDeg(f.lowest), unit.AngleFromDeg(f.highest)
+	set.UpperSun, set.LowerSun = unit.AngleFromDeg(f.sunUpper), unit.AngleFromDeg(f.sunLower)
+	set.SightError, set.CommonError = unit.AngleFromMin(f.sightError), unit.AngleFromMin(f.commonError)
+	return set
+}
+
+// outputs prints the plan in all the forms asked for; the text comes last and
+// is left out where standard output is taken.
+func (f *planFlags) outputs(p *plan.Plan, stamp time.Time, w world) ([]output, error) {
+	opt := calendars.Options{Alarm: f.alarm, Stamp: stamp}
+	forms := []struct {
+		path  string
+		write func(io.Writer) error
+	}{
+		{f.ics, func(b io.Writer) error { return calendars.Write(b, p, opt) }},
+		{f.json, p.WriteJSON},
+		{"-", func(b io.Writer) error { return p.WriteText(b, bold(w)) }},
+	}
+	if f.ics == "-" || f.json == "-" {
+		forms = forms[:2]
+	}
+	var all []output
+	for _, form := range forms {
+		if form.path == "" {
+			continue
+		}
+		var b bytes.Buffer
+		if err := form.write(&b); err != nil {
+			return nil, err
+		}
+		all = append(all, output{form.path, b.Bytes()})
+	}
+	return all, nil
+}
+
+// bold tells whether standard output is a terminal that wants bold headings.
+func bold(w world) bool {
+	f, ok := w.out.(*os.File)
+	return ok && term.IsTerminal(int(f.Fd())) && w.env("NO_COLOR") == "" && w.env("TERM") != "dumb"
+}

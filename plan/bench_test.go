@@ -1,0 +1,48 @@
+package plan
+
+import (
+	"testing"
+	"time"
+
+	"gloam/track"
+)
+
+// longPassage is an invented voyage of about as many days as wanted: back and
+// forth between two latitudes, at 8 knots.
+func longPassage(tb testing.TB, days int) *track.Passage {
+	tb.Helper()
+	const leg, speed = 20 * 60, 8
+	r := &track.Route{Name: "to and fro"}
+	for left := float64(days * 24 * speed); ; left -= leg {
+		lat := 20.0
+		if len(r.Waypoints)%2 == 1 {
+			lat = 20 + min(left+leg, leg)/60
+		}
+		r.Waypoints = append(r.Waypoints, track.Waypoint{Position: track.PositionFromDeg(lat, -40)})
+		if left <= 0 && len(r.Waypoints) > 1 {
+			break
+		}
+	}
+	p, err := r.Sail(time.Date(2026, 11, 20, 12, 0, 0, 0, time.UTC), speed, track.Rhumb)
+	if err != nil {
+		tb.Fatal(err)
+	}
+	return p
+}
+
+// benchmarkPlan reports the cost of a voyage's day beside the usual figures.
+func benchmarkPlan(b *testing.B, days int) {
+	p := longPassage(b, days)
+	sailed := p.Arrival.Sub(p.Departure).Hours() / 24
+	b.ReportAllocs()
+	for b.Loop() {
+		if _, err := New(p, DefaultSettings()); err != nil {
+			b.Fatal(err)
+		}
+	}
+	b.ReportMetric(sailed, "days")
+	b.ReportMetric(float64(b.Elapsed().Microseconds())/float64(b.N)/sailed, "µs/day")
+}
+
+func BenchmarkPlan15Days(b *testing.B)  { benchmarkPlan(b, 15) }
+func BenchmarkPlan150Days(b *testing.B) { benchmarkPlan(b, 150) }

@@ -1,0 +1,55 @@
+package plan
+
+import (
+	"math"
+	"sort"
+
+	"github.com/soniakeys/unit"
+
+	"gloam/astro"
+	"gloam/track"
+)
+
+// Candidate is a body that can be shot in a window, as seen from the DR
+// position.
+type Candidate struct {
+	Body astro.Body
+	astro.Place
+	Altitude, Azimuth unit.Angle // Hc and Zn
+	Limb              astro.Limb // the one to bring to the horizon
+	Preset            unit.Angle // Hs to set on the sextant
+	Error             unit.Angle // standard error of the sight
+}
+
+// shootable are the bodies considered in a star window.
+var shootable = append(append([]astro.Body{astro.Moon}, astro.Planets()...), astro.Stars()...)
+
+// candidates finds the bodies between the altitude limits, in order of
+// azimuth.
+func (set Settings) candidates(m *astro.Moment, at track.Position) []Candidate {
+	var all []Candidate
+	for _, b := range shootable {
+		p := m.Place(b)
+		hc, zn := p.From(at.Lat, at.Lon)
+		if hc < set.LowestAltitude || hc > set.HighestAltitude {
+			continue
+		}
+		c := Candidate{Body: b, Place: p, Altitude: hc, Azimuth: zn, Error: set.sightError(hc)}
+		if b == astro.Moon {
+			c.Limb = m.BrightLimb(b, at.Lat, at.Lon)
+		}
+		c.Preset = set.Preset(hc, p, c.Limb)
+		all = append(all, c)
+	}
+	sort.SliceStable(all, func(i, j int) bool { return all[i].Azimuth < all[j].Azimuth })
+	return all
+}
+
+// sightError is the standard error of a sight at an altitude: the observer's,
+// a twentieth of the refraction, and 0.05' tan h for a sextant rocked a little
+// out of the vertical.
+func (set Settings) sightError(h unit.Angle) unit.Angle {
+	own, air := set.SightError.Min(), 0.05*set.Refraction(h).Min()
+	tilt := 0.05 * math.Min(h.Tan(), 1e3)
+	return unit.AngleFromMin(math.Sqrt(own*own + air*air + tilt*tilt))
+}

@@ -1,0 +1,148 @@
+package plan
+
+import (
+	"fmt"
+	"time"
+
+	"github.com/soniakeys/unit"
+
+	"gloam/astro"
+	"gloam/track"
+	"gloam/track/dm"
+)
+
+// Day is one ship's day of the passage, or as much of it as the passage has.
+type Day struct {
+	track.Day
+	From, To time.Time // UTC: the part of the day that the passage has
+	Events   []Event
+	Windows  []Window
+	Moon     MoonPhase
+	NoWindow string   // why the day has no window; empty where it has one
+	Remains  []Remain // what there is to shoot on a day without a window
+}
+
+// MoonPhase is how the Moon looks.
+type MoonPhase struct {
+	Illuminated float64 // lit part of the disc, 0 to 1
+	Waxing      bool
+}
+
+// Remain is a body that can be shot on a day without star window: when it
+// stands highest, and how high.
+type Remain struct {
+	Body     astro.Body
+	Highest  time.Time
+	Altitude unit.Angle
+}
+
+// days sorts events and windows into ship's days and says of a day without a
+// window why it has none.
+func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []Window) []Day {
+	var all []Day
+	list := clock.Days()
+	for i, d := range list {
+		day := Day{Day: d, From: laterOf(d.Begin, s.passage.Departure), To: s.passage.Arrival}
+		last := i+1 == len(list)
+		if !last {
+			day.To = list[i+1].Begin
+		}
+		for len(events) > 0 && (last || events[0].Time.Before(day.To)) {
+			day.Events, events = append(day.Events, events[0]), events[1:]
+		}
+		for len(windows) > 0 && (last || windows[0].Best.Before(day.To)) {
+			day.Windows, windows = append(day.Windows, windows[0]), windows[1:]
+		}
+		day.Moon = moonPhase(middle(day.From, day.To), set)
+		if len(day.Windows) == 0 {
+			day.NoWindow = s.noWindow(day, set)
+			day.Remains = s.remains(day, set)
+		}
+		all = append(all, day)
+	}
+	return all
+}
+
+func moonPhase(t time.Time, set Settings) MoonPhase {
+	lit := func(t time.Time) float64 { return astro.NewMoment(t, set.DeltaT(t)).Place(astro.Moon).Illuminated }
+	now := lit(t)
+	return MoonPhase{now, lit(t.Add(time.Hour)) > now}
+}
+
+// noWindow says in words what keeps the Sun out of the band on a day. It looks
+// at the whole day, the ship lying still before departure and after arrival.
+func (s *sky) noWindow(d Day, set Settings) string {
+	end := d.Begin.Add(24 * time.Hour)
+	lowest, _ := highest(d.Begin, end, func(t time.Time) float64 { return -s.altitude(astro.Sun, t).Rad() })
+	greatest, _ := highest(d.Begin, end, func(t time.Time) float64 { return s.altitude(astro.Sun, t).Rad() })
+	low, high := unit.Angle(-lowest), unit.Angle(greatest)
+	switch {
+	case low > set.UpperSun:
+		return fmt.Sprintf("the Sun does not sink to %s (lowest %s)", wholeDegrees(set.UpperSun), dm.Altitude(low))
+	case high < set.LowerSun:
+		return fmt.Sprintf("the Sun does not rise to %s (highest %s)", wholeDegrees(set.LowerSun), dm.Altitude(high))
+	}
+	return "the day's twilights fall outside the passage"
+}
+
+func wholeDegrees(a unit.Angle) string { return fmt.Sprintf("%.4g°", a.Deg()) }
+
+// venusElongation is how far Venus must stand from the Sun to be looked for by
+// day (common practice, no published source).
+var venusElongation = unit.AngleFromDeg(20)
+
+// remains lists Sun, Moon and Venus where they come between the altitude
+// limits, with the instant they stand highest below the upper one.
+func (s *sky) remains(d Day, set Settings) []Remain {
+	var all []Remain
+	for _, b := range []astro.Body{astro.Sun, astro.Moon, astro.Venus} {
+		value, at := highest(d.From, d.To, func(t time.Time) float64 {
+			return min(s.altitude(b, t), set.HighestAltitude).Rad()
+		})
+		if unit.Angle(value) < set.LowestAltitude {
+			continue
+		}
+		if b == astro.Venus && astro.NewMoment(at, set.DeltaT(at)).Elongation(b) < venusElongation {
+			continue
+		}
+		all = append(all, Remain{b, at, unit.Angle(value)})
+	}
+	return all
+}
+
+// highest finds the greatest value of f in a span and when it is reached, to a
+// minute: the best of samples ten minutes apart, then narrowed by thirds.
+func highest(from, to time.Time, f func(time.Time) float64) (value float64, at time.Time) {
+	const step = 10 * time.Minute
+	at, value = to, f(to)
+	for t := from; t.Before(to); t = t.Add(step) {
+		if v := f(t); v > value {
+			at, value = t, v
+		}
+	}
+	a, b := laterOf(at.Add(-step), from), earlierOf(at.Add(step), to)
+	for b.Sub(a) > time.Minute {
+		third := b.Sub(a) / 3
+		if f(a.Add(third)) < f(b.Add(-third)) {
+			a = a.Add(third)
+		} else {
+			b = b.Add(-third)
+		}
+	}
+	at = middle(a, b)
+	return f(at), at
+}
+
+func laterOf(a, b time.Time) time.Time {
+	if a.After(b) {
+		return a
+	}
+	return b
+}
+
+func earlierOf(a, b time.Time) time.Time {
+	if a.Before(b) {
+		return a
+	}
+	return b
+}

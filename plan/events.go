@@ -1,0 +1,108 @@
+package plan
+
+import (
+	"sort"
+	"time"
+
+	"github.com/soniakeys/unit"
+
+	"gloam/astro"
+	"gloam/track"
+)
+
+// EventKind names an event, as written in the plan's JSON.
+type EventKind string
+
+// The kinds of event.
+const (
+	Sunrise         EventKind = "sunrise"
+	Sunset          EventKind = "sunset"
+	CivilDawn       EventKind = "civil-dawn"
+	CivilDusk       EventKind = "civil-dusk"
+	NauticalDawn    EventKind = "nautical-dawn"
+	NauticalDusk    EventKind = "nautical-dusk"
+	Moonrise        EventKind = "moonrise"
+	Moonset         EventKind = "moonset"
+	MeridianPassage EventKind = "meridian-passage"
+)
+
+// Event is an instant at which a body crosses an altitude, or the Sun the
+// meridian, as seen from the moving ship.
+type Event struct {
+	Kind EventKind
+	Time time.Time // UTC
+	track.Position
+}
+
+// Altitudes of the Sun's centre, geocentric: at sunrise and sunset refraction
+// of 34' and a semidiameter of 16' bring the upper limb to the horizon.
+var (
+	sunriseAltitude  = unit.AngleFromMin(-50)
+	civilTwilight    = unit.AngleFromDeg(-6)
+	nauticalTwilight = unit.AngleFromDeg(-12)
+)
+
+// moonriseAltitude is the Moon's geocentric altitude when its upper limb is on
+// the horizon: parallax less semidiameter, 0.7275 HP, less refraction of 34'.
+func moonriseAltitude(p astro.Place) unit.Angle {
+	return p.HP.Mul(0.7275) - unit.AngleFromMin(34)
+}
+
+// eventSearches are the altitudes searched and what crossing them is called.
+var eventSearches = []struct {
+	body            astro.Body
+	level           func(astro.Place) unit.Angle
+	rising, sinking EventKind
+}{
+	{astro.Sun, fixed(sunriseAltitude), Sunrise, Sunset},
+	{astro.Sun, fixed(civilTwilight), CivilDawn, CivilDusk},
+	{astro.Sun, fixed(nauticalTwilight), NauticalDawn, NauticalDusk},
+	{astro.Moon, moonriseAltitude, Moonrise, Moonset},
+}
+
+// events finds all events of the passage, in order of time. See [crossings]
+// for why none can be missed.
+func (s *sky) events() []Event {
+	var all []Event
+	add := func(kind EventKind, t time.Time) {
+		all = append(all, Event{kind, t, s.passage.At(t).Position})
+	}
+	for _, e := range eventSearches {
+		for _, c := range s.crossings(s.above(e.body, e.level)) {
+			if c.rising {
+				add(e.rising, c.time)
+			} else {
+				add(e.sinking, c.time)
+			}
+		}
+	}
+	for _, t := range s.meridianPassages() {
+		add(MeridianPassage, t)
+	}
+	sort.SliceStable(all, func(i, j int) bool { return all[i].Time.Before(all[j].Time) })
+	return all
+}
+
+// poleMiss is the cosine of latitude within which the ship passes over a pole,
+// where any hour angle may be called zero: 60 m.
+const poleMiss = 1e-5
+
+// meridianPassages finds when the Sun's LHA is zero. It searches cos φ cos δ
+// sin LHA, which stays smooth even where longitude runs wild.
+func (s *sky) meridianPassages() []time.Time {
+	lha := func(t time.Time) (unit.Angle, float64) {
+		fix := s.passage.At(t)
+		p := s.tables[astro.Sun].Place(t)
+		return p.GHA + fix.Lon, fix.Lat.Cos() * p.Dec.Cos()
+	}
+	var times []time.Time
+	for _, c := range s.crossings(func(t time.Time) float64 {
+		angle, scale := lha(t)
+		return scale * angle.Sin()
+	}) {
+		if angle, scale := lha(c.time); angle.Cos() > 0 && scale > poleMiss {
+			times = append(times, c.time)
+		}
+	}
+	return times
+}

@@ -1,0 +1,107 @@
+package plan
+
+import (
+	"math"
+	"sort"
+
+	"github.com/soniakeys/unit"
+)
+
+// Sight is what a fix needs to know of a sight: the bearing of the body and
+// the standard error of its altitude.
+type Sight struct {
+	Azimuth unit.Angle
+	Error   unit.Angle // above 0
+}
+
+// Covariance is that of a fix, in NM², along north and east.
+type Covariance struct{ NN, NE, EE float64 }
+
+// Ellipse is the area that holds the fix with 95 % probability.
+type Ellipse struct {
+	SemiMajorNM, SemiMinorNM float64
+	Axis                     unit.Angle // bearing of the major axis, [0°, 180°)
+}
+
+// chi95 is the 95 % point of χ² with two degrees of freedom.
+const chi95 = 5.991
+
+// information sums what sights tell of position and common error: the entries
+// of Σ h hᵀ/s² with h = (cos Zn, sin Zn, 1) and s in minutes, which on the
+// sea are nautical miles.
+type information struct{ cc, cs, ss, c, s, w float64 }
+
+func (g Sight) information() information {
+	sin, cos := g.Azimuth.Sincos()
+	w := 1 / (g.Error.Min() * g.Error.Min())
+	return information{cos * cos * w, cos * sin * w, sin * sin * w, cos * w, sin * w, w}
+}
+
+func (a information) add(b information) information {
+	return information{a.cc + b.cc, a.cs + b.cs, a.ss + b.ss, a.c + b.c, a.s + b.s, a.w + b.w}
+}
+
+// covariance inverts the information on position after the common error, of
+// standard error common (minutes), is marginalised. Where the sights do not fix
+// a position its entries are +Inf.
+func (a information) covariance(common float64) Covariance {
+	if common > 0 {
+		k := 1 / (a.w + 1/(common*common))
+		a.cc -= a.c * a.c * k
+		a.cs -= a.c * a.s * k
+		a.ss -= a.s * a.s * k
+	}
+	det := a.cc*a.ss - a.cs*a.cs
+	if det <= 1e-12*a.w*a.w {
+		return Covariance{math.Inf(1), 0, math.Inf(1)}
+	}
+	return Covariance{NN: a.ss / det, NE: -a.cs / det, EE: a.cc / det}
+}
+
+// FixCovariance is the covariance of the fix from sights that share a common
+// error (index, dip, the observer's own), by least squares:
+//
+//	altitude error = north cos Zn + east sin Zn + common + own
+//
+// The model is linear: good for a DR position within some 30 NM.
+func FixCovariance(sights []Sight, common unit.Angle) Covariance {
+	var sum information
+	for _, g := range sights {
+		sum = sum.add(g.information())
+	}
+	return sum.covariance(common.Min())
+}
+
+// ExpectedError is the root mean square distance of the fix from the truth,
+// in NM.
+func (c Covariance) ExpectedError() float64 { return math.Sqrt(c.NN + c.EE) }
+
+// Ellipse gives the 95 % ellipse.
+func (c Covariance) Ellipse() Ellipse {
+	mean, half := (c.NN+c.EE)/2, math.Hypot((c.NN-c.EE)/2, c.NE)
+	axis := unit.Angle(math.Atan2(2*c.NE, c.NN-c.EE) / 2)
+	if axis < 0 {
+		axis += math.Pi
+	}
+	return Ellipse{
+		SemiMajorNM: math.Sqrt(chi95 * (mean + half)),
+		SemiMinorNM: math.Sqrt(chi95 * math.Max(mean-half, 0)),
+		Axis:        axis,
+	}
+}
+
+// Gaps gives the least and the greatest angle between neighbouring bearings
+// round the horizon.
+func Gaps(azimuths ...unit.Angle) (least, greatest unit.Angle) {
+	sorted := append([]unit.Angle(nil), azimuths...)
+	sort.Slice(sorted, func(i, j int) bool { return sorted[i] < sorted[j] })
+	least = 2 * math.Pi
+	for i := range sorted {
+		gap := (sorted[(i+1)%len(sorted)] - sorted[i]).Mod1()
+		if len(sorted) == 1 {
+			gap = 2 * math.Pi
+		}
+		least, greatest = min(least, gap), max(greatest, gap)
+	}
+	return least, greatest
+}

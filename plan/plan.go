@@ -1,0 +1,60 @@
+package plan
+
+import (
+	"gloam/astro"
+	"gloam/track"
+)
+
+// Plan is the plan of a voyage's sights.
+type Plan struct {
+	Passage  *track.Passage
+	Clock    *track.Clock
+	Settings Settings
+	Days     []Day    // ship's days with their events and windows
+	Notes    []string // what the user should know of the input
+}
+
+// New plans the sights of a passage. The error tells a setting out of range.
+func New(p *track.Passage, set Settings) (*Plan, error) {
+	if err := set.Validate(); err != nil {
+		return nil, err
+	}
+	s := newSky(p, set.DeltaT)
+	clock := track.NewClock(p)
+	windows := s.windows(set)
+	nameWindows(windows, clock)
+	for i := range windows {
+		w := &windows[i]
+		w.Bodies = set.candidates(astro.NewMoment(w.Best, set.DeltaT(w.Best)), w.Fix.Position)
+		w.Triads = triads(w.Bodies, set.CommonError)
+	}
+	return &Plan{Passage: p, Clock: clock, Settings: set, Days: s.days(clock, set, s.events(), windows)}, nil
+}
+
+// Windows gives the windows of all days in order.
+func (p *Plan) Windows() []Window {
+	var all []Window
+	for _, d := range p.Days {
+		all = append(all, d.Windows...)
+	}
+	return all
+}
+
+// Events gives the events of all days in order.
+func (p *Plan) Events() []Event {
+	var all []Event
+	for _, d := range p.Days {
+		all = append(all, d.Events...)
+	}
+	return all
+}
+
+// Candidate finds a window's candidate by its body.
+func (w *Window) Candidate(b astro.Body) *Candidate {
+	for i := range w.Bodies {
+		if w.Bodies[i].Body == b {
+			return &w.Bodies[i]
+		}
+	}
+	return nil
+}

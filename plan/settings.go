@@ -1,0 +1,72 @@
+package plan
+
+import (
+	"fmt"
+	"math"
+	"time"
+
+	"github.com/soniakeys/unit"
+
+	"gloam/astro"
+)
+
+// Settings is what a plan depends on beside the passage. Start from
+// [DefaultSettings].
+type Settings struct {
+	astro.Sextant
+
+	SightError  unit.Angle // standard error of one sight, above 0
+	CommonError unit.Angle // standard error common to a round's sights, 0 or more
+
+	LowestAltitude, HighestAltitude unit.Angle // limits of Hc for a candidate, 0° to 90°
+	UpperSun, LowerSun              unit.Angle // the Sun's altitudes that bound a window, -18° to 0°
+
+	DeltaT func(time.Time) time.Duration // TT - UT1
+}
+
+// bestSun is the Sun's altitude at which a star window is best: stars out and
+// horizon sharp.
+var bestSun = unit.AngleFromDeg(-8.5)
+
+// DefaultSettings are for a small boat: eye 2 m, sextant without error,
+// standard air, half a minute of error each to a sight and to a round,
+// candidates from 12° to 72°, windows between civil and nautical twilight.
+func DefaultSettings() Settings {
+	return Settings{
+		Sextant:         astro.Sextant{EyeM: 2, TemperatureC: 10, PressureHPa: 1010},
+		SightError:      unit.AngleFromMin(0.5),
+		CommonError:     unit.AngleFromMin(0.5),
+		LowestAltitude:  unit.AngleFromDeg(12),
+		HighestAltitude: unit.AngleFromDeg(72),
+		UpperSun:        civilTwilight,
+		LowerSun:        nauticalTwilight,
+		DeltaT:          astro.DeltaT,
+	}
+}
+
+// Validate tells the first setting that is out of range.
+func (s Settings) Validate() error {
+	for _, c := range []struct {
+		name            string
+		value, min, max float64
+	}{
+		{"height of eye (m)", s.EyeM, 0, 100},
+		{"index error (')", s.IndexError.Min(), -60, 60},
+		{"temperature (°C)", s.TemperatureC, -60, 60},
+		{"pressure (hPa)", s.PressureHPa, 850, 1100},
+		{"sight error (')", s.SightError.Min(), 0.01, 60},
+		{"common error (')", s.CommonError.Min(), 0, 60},
+		{"lowest altitude (°)", s.LowestAltitude.Deg(), 0, 90},
+		{"highest altitude (°)", s.HighestAltitude.Deg(), s.LowestAltitude.Deg(), 90},
+		{"Sun's lower limit (°)", s.LowerSun.Deg(), -18, 0},
+		{"Sun's upper limit (°)", s.UpperSun.Deg(), s.LowerSun.Deg(), 0},
+	} {
+		if math.IsNaN(c.value) || c.value < c.min-1e-9 || c.value > c.max+1e-9 {
+			return fmt.Errorf("%s: %.4g (%.4g to %.4g)", c.name, c.value, c.min, c.max)
+		}
+	}
+	if s.UpperSun-s.LowerSun < unit.AngleFromDeg(0.01) || s.HighestAltitude-s.LowestAltitude < unit.AngleFromDeg(0.01) {
+		return fmt.Errorf("limits: lower and upper are the same (the lower must be below the upper)")
+	}
+	return nil
+}

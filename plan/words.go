@@ -1,0 +1,53 @@
+package plan
+
+import (
+	"fmt"
+	"strings"
+	"time"
+)
+
+// Words gives the kind in words: "evening stars".
+func (k WindowKind) Words() string { return strings.ReplaceAll(string(k), "-", " ") }
+
+// Words gives the kind in words: "civil dusk".
+func (k EventKind) Words() string { return strings.ReplaceAll(string(k), "-", " ") }
+
+// ZoneText writes the offset of ship's time both ways the trade does: what is
+// added to UTC to get ship's time, and the zone description, added to ship's
+// time to get UTC: "UTC-2 (ZD +2)".
+func ZoneText(offset time.Duration) string {
+	hours := int(offset / time.Hour)
+	if hours == 0 {
+		return "UTC (ZD 0)"
+	}
+	return fmt.Sprintf("UTC%+d (ZD %+d)", hours, -hours)
+}
+
+// Words tells how much of the Moon is lit and whether it grows: "84 % lit,
+// waxing".
+func (m MoonPhase) Words() string {
+	percent := int(100*m.Illuminated + 0.5)
+	switch {
+	case percent <= 1:
+		return "new"
+	case percent >= 99:
+		return "full"
+	case m.Waxing:
+		return fmt.Sprintf("%d %% lit, waxing", percent)
+	}
+	return fmt.Sprintf("%d %% lit, waning", percent)
+}
+
+// Comment says what a window lacks, in words: nothing to shoot, or too few
+// bodies for a checked fix. It is empty where there is a triad.
+func (w *Window) Comment() string {
+	switch len(w.Bodies) {
+	case 0:
+		return "no body between the altitude limits"
+	case 1:
+		return "one body only: a line of position, no fix"
+	case 2:
+		return "two bodies only: no check on the fix"
+	}
+	return ""
+}

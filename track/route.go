@@ -1,0 +1,83 @@
+package track
+
+import (
+	"fmt"
+	"math"
+	"time"
+
+	"github.com/soniakeys/unit"
+)
+
+// MaxLatitude is the greatest latitude a waypoint may have. Nearer the pole
+// longitude, and with it course and ship's time, loses its meaning.
+var MaxLatitude = unit.AngleFromDeg(89.9)
+
+// repeatNM is the distance under which two vertices count as one place: 1 m.
+const repeatNM = 1 / mileM
+
+// Waypoint is a named place on a route; the name may be empty.
+type Waypoint struct {
+	Name string
+	Position
+}
+
+// Label names the waypoint, or gives its position where it has no name.
+func (w Waypoint) Label() string {
+	if w.Name != "" {
+		return w.Name
+	}
+	return w.Position.String()
+}
+
+// Route is a line to sail and what its file says of how. Departure, SpeedKn
+// and EyeM are zero and Sailing is nil where the file is silent.
+type Route struct {
+	Name      string
+	Waypoints []Waypoint // two or more, neighbours differ
+	Departure time.Time
+	SpeedKn   float64
+	Sailing   *Sailing
+	EyeM      float64
+	Notes     []string // what the reader passed over, in words
+}
+
+// newRoute checks the vertices and drops those that repeat their neighbour.
+func newRoute(vertices []Waypoint) (*Route, error) {
+	r := &Route{}
+	for i, w := range vertices {
+		if math.Abs(w.Lat.Rad()) > MaxLatitude.Rad() {
+			return nil, &Error{
+				Place:   vertexPlace(i),
+				Met:     fmt.Sprintf("latitude %.4f°", w.Lat.Deg()),
+				Allowed: fmt.Sprintf("-%[1]v° to %[1]v°: at a pole neither course nor ship's time is defined", MaxLatitude.Deg()),
+				Hint:    "end the leg a few miles short of the pole",
+			}
+		}
+		if n := len(r.Waypoints); n > 0 && near(r.Waypoints[n-1].Position, w.Position, repeatNM) {
+			r.Notes = append(r.Notes, fmt.Sprintf("%s repeats the one before it and is skipped", vertexPlace(i)))
+			if r.Waypoints[n-1].Name == "" {
+				r.Waypoints[n-1].Name = w.Name
+			}
+			continue
+		}
+		r.Waypoints = append(r.Waypoints, w)
+	}
+	if len(r.Waypoints) < 2 {
+		return nil, &Error{
+			Place: "line", Met: fmt.Sprintf("%d point(s), all at one place", len(vertices)),
+			Allowed: "two or more different ones", Hint: "draw the route as a line from departure to arrival",
+		}
+	}
+	return r, nil
+}
+
+func vertexPlace(i int) string { return fmt.Sprintf("point %d of the line", i+1) }
+
+// near tells whether two places lie within nm nautical miles.
+func near(a, b Position, nm float64) bool {
+	if math.Abs((a.Lat - b.Lat).Min()) > 2*nm+1e-9 {
+		return false
+	}
+	leg := NewLeg(Waypoint{Position: a}, Waypoint{Position: b}, GreatCircle)
+	return leg.DistanceNM <= nm
+}
