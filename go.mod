@@ -1,6 +1,6 @@
 module gloam
 
-go 1.26.8
+go 1.26.0
 
 require (
 	github.com/paulmach/orb v0.14.0
@@ -17,5 +17,6 @@ require (
 	github.com/spf13/pflag v1.0.9 // indirect
 	golang.org/x/sys v0.50.0 // indirect
 	golang.org/x/term v0.48.0 // indirect
+	golang.org/x/tools v0.26.0 // indirect
 	pgregory.net/rapid v1.3.0 // indirect
 )

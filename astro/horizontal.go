@@ -17,7 +17,7 @@ func AltAz(gha, dec, lat, lon unit.Angle) (hc, zn unit.Angle) {
 	north := sd*cl - cd*sl*ch
 	west := cd * sh
 	up := sd*sl + cd*cl*ch
-	return unit.Angle(math.Atan2(up, math.Hypot(north, west))), unit.Angle(math.Atan2(-west, north)).Mod1()
+	return unit.Angle(math.Atan2(up, math.Hypot(north, west))), circle(math.Atan2(-west, north))
 }
 
 // From gives computed altitude and azimuth of the place; see [AltAz].

@@ -103,4 +103,4 @@ func (m *Moment) aberrate(p vector) vector {
 }
 
 // hourAngle is the GHA of a right ascension, in [0°, 360°).
-func (m *Moment) hourAngle(ra float64) unit.Angle { return unit.Angle(m.gast - ra).Mod1() }
+func (m *Moment) hourAngle(ra float64) unit.Angle { return circle(m.gast - ra) }

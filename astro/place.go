@@ -37,7 +37,7 @@ const moonRadius = 0.2724 // of the Earth's
 func (m *Moment) Place(b Body) Place {
 	switch b.Class() {
 	case ClassPoint:
-		return Place{GHA: unit.Angle(m.gast).Mod1()}
+		return Place{GHA: circle(m.gast)}
 	case ClassMoon:
 		return m.moon()
 	case ClassStar:

@@ -64,7 +64,7 @@ func (tb *Table) Place(t time.Time) Place {
 	ut := daysSinceJ2000(t)
 	ra, dec := r.direction.lonLat()
 	gast := siderealTime(ut, (ut+tb.dt)/36525) + r.ee
-	return Place{GHA: unit.Angle(gast - ra).Mod1(), Dec: unit.Angle(dec), HP: unit.Angle(r.hp)}
+	return Place{GHA: circle(gast - ra), Dec: unit.Angle(dec), HP: unit.Angle(r.hp)}
 }
 
 // lagrange gives the weights of six values at 0, 1 ... 5 for the value at x

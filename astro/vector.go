@@ -1,6 +1,10 @@
 package astro
 
-import "math"
+import (
+	"math"
+
+	"github.com/soniakeys/unit"
+)
 
 const (
 	degree    = math.Pi / 180
@@ -63,4 +67,13 @@ func rotX(a float64) matrix {
 func rotZ(a float64) matrix {
 	s, c := math.Sincos(a)
 	return matrix{{c, s, 0}, {-s, c, 0}, {0, 0, 1}}
+}
+
+// circle brings an angle into [0°, 360°); a turn by floating point remainder
+// can end on 360° itself.
+func circle(a float64) unit.Angle {
+	if c := unit.Angle(a).Mod1(); c < 2*math.Pi {
+		return c
+	}
+	return 0
 }

@@ -40,7 +40,10 @@ type Remain struct {
 // window why it has none.
 func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []Window) []Day {
 	var all []Day
-	list := clock.Days()
+	list, every := clock.Days(), windows
+	if n := len(list); n > 1 && !list[n-1].Begin.Before(s.passage.Arrival) {
+		list = list[:n-1] // arrival at midnight begins no day
+	}
 	for i, d := range list {
 		day := Day{Day: d, From: laterOf(d.Begin, s.passage.Departure), To: s.passage.Arrival}
 		last := i+1 == len(list)
@@ -55,7 +58,7 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 		}
 		day.Moon = moonPhase(middle(day.From, day.To), set)
 		if len(day.Windows) == 0 {
-			day.NoWindow = s.noWindow(day, set)
+			day.NoWindow = s.noWindow(day, set, clock, every)
 			day.Remains = s.remains(day, set)
 		}
 		all = append(all, day)
@@ -69,9 +72,15 @@ func moonPhase(t time.Time, set Settings) MoonPhase {
 	return MoonPhase{now, lit(t.Add(time.Hour)) > now}
 }
 
-// noWindow says in words what keeps the Sun out of the band on a day. It looks
-// at the whole day, the ship lying still before departure and after arrival.
-func (s *sky) noWindow(d Day, set Settings) string {
+// noWindow says in words why a day has no window: a window of another date
+// reaches into it, or the Sun keeps out of the band. For the Sun it looks at
+// the whole day, the ship lying still before departure and after arrival.
+func (s *sky) noWindow(d Day, set Settings, clock *track.Clock, every []Window) string {
+	for _, w := range every {
+		if w.Begin.Before(d.To) && w.End.After(d.From) {
+			return fmt.Sprintf("the %s that reach into it are listed under %s", w.Kind.Words(), clock.Day(w.Best).Date.Format("2 January"))
+		}
+	}
 	end := d.Begin.Add(24 * time.Hour)
 	lowest, _ := highest(d.Begin, end, func(t time.Time) float64 { return -s.altitude(astro.Sun, t).Rad() })
 	greatest, _ := highest(d.Begin, end, func(t time.Time) float64 { return s.altitude(astro.Sun, t).Rad() })

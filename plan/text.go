@@ -15,7 +15,7 @@ import (
 )
 
 // textWidth is how wide a line of text grows at most, but for long names.
-const textWidth = 76
+const textWidth = 78
 
 // WriteText prints the plan for a person: the voyage, then for each ship's
 // date the events, the Moon, and the windows. Times are given by the ship's
@@ -25,7 +25,11 @@ func (p *Plan) WriteText(w io.Writer, bold bool) error {
 	t := &text{plan: p, bold: bold}
 	t.voyage()
 	for i := range p.Days {
-		t.day(&p.Days[i])
+		change := ""
+		if i > 0 {
+			change = clockChange(p.Days[i-1].Day, p.Days[i].Day)
+		}
+		t.day(&p.Days[i], change)
 	}
 	t.heading("CAUTIONS", "")
 	for _, c := range Cautions {
@@ -50,7 +54,8 @@ func (t *text) line(format string, args ...any) {
 func (t *text) heading(title, right string) {
 	rule := textWidth - utf8.RuneCountInString(title) - utf8.RuneCountInString(right) - 2
 	t.line("")
-	t.line("%s", t.strong(fmt.Sprintf("%s %s %s", title, strings.Repeat("-", max(rule, 3)), right)))
+	ruled := fmt.Sprintf("%s %s %s", title, strings.Repeat("-", max(rule, 3)), right)
+	t.line("%s", t.strong(strings.TrimSpace(ruled)))
 }
 
 func (t *text) strong(s string) string {
@@ -102,9 +107,12 @@ func spanText(d time.Duration) string {
 	return fmt.Sprintf("%d d %d h", hours/24, hours%24)
 }
 
-func (t *text) day(d *Day) {
+func (t *text) day(d *Day, clockChange string) {
 	t.heading(strings.ToUpper(d.Date.Format("Monday 2 January 2006")), "ship's time "+ZoneText(d.Offset))
-	t.line("Moon %s", d.Moon.Words())
+	if clockChange != "" {
+		t.line("%s.", clockChange)
+	}
+	t.line("Moon %s.", d.Moon.Words())
 	if len(d.Events) > 0 {
 		t.line("")
 		t.line(" ship   UTC on     event             DR position")
@@ -160,10 +168,10 @@ func (t *text) triads(w *Window) {
 		return
 	}
 	t.line("")
-	t.line("Triad                                  gaps          error    95 %% ellipse")
+	t.line("Triad                                gaps      error  95 %% ellipse, NM")
 	for i, tr := range w.Triads {
 		e := tr.Covariance.Ellipse()
-		t.line("%d  %-34s  %3.0f to %3.0f°  %.2f NM  %.1f x %.1f NM along %s", i+1, tr.Names(),
+		t.line("%d  %-32s  %3.0f-%3.0f°  %.2f  %.1f x %.1f along %s", i+1, tr.Names(),
 			tr.LeastGap.Deg(), tr.GreatestGap.Deg(), tr.Covariance.ExpectedError(),
 			e.SemiMajorNM, e.SemiMinorNM, dm.Bearing(e.Axis))
 	}

@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"strings"
 	"time"
+
+	"gloam/track"
 )
 
 // Words gives the kind in words: "evening stars".
@@ -21,6 +23,23 @@ func ZoneText(offset time.Duration) string {
 		return "UTC (ZD 0)"
 	}
 	return fmt.Sprintf("UTC%+d (ZD %+d)", hours, -hours)
+}
+
+// clockChange says what is done to clock and date between one ship's day and
+// the next, or nothing.
+func clockChange(before, now track.Day) string {
+	hours := int((now.Offset - before.Offset) / time.Hour)
+	switch dates := int(now.Date.Sub(before.Date) / (24 * time.Hour)); {
+	case dates < 1:
+		return "Date line crossed: the same date again"
+	case dates > 1:
+		return "Date line crossed: a date is skipped"
+	case hours > 0:
+		return fmt.Sprintf("Clock forward %d h at midnight", hours)
+	case hours < 0:
+		return fmt.Sprintf("Clock back %d h at midnight", -hours)
+	}
+	return ""
 }
 
 // Words tells how much of the Moon is lit and whether it grows: "84 % lit,

@@ -216,9 +216,13 @@ func nameVertices(vertices []Waypoint, points []feature) error {
 		if err != nil {
 			return err
 		}
+		if name == "" {
+			continue
+		}
 		p := f.geometry.(orb.Point)
+		place := PositionFromDeg(p.Lat(), p.Lon())
 		for i := range vertices {
-			if name != "" && vertices[i].Name == "" && near(vertices[i].Position, PositionFromDeg(p.Lat(), p.Lon()), waypointNM) {
+			if vertices[i].Name == "" && near(vertices[i].Position, place, waypointNM) {
 				vertices[i].Name = name
 			}
 		}

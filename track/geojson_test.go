@@ -60,10 +60,10 @@ var goodRoutes = []struct{ name, in, want string }{
 		`"coordinates":[[0,1],[2,3]]}`, "1.000 0.000; 3.000 2.000"},
 	{"edge of the latitudes", `{"type":"LineString","coordinates":[[0,-89.9],[2,89.9]]}`, "-89.900 0.000; 89.900 2.000"},
 
-	// 0.09' of latitude is 0.09 NM to within 1 %; likewise 0.2'.
-	{"points name waypoints", collection(pointFeature("Near", "[0,50.0015]"), pointFeature("Far", "[3,49.9967]"), lineFeature(`[[0,50],[3,50]]`, `{}`)),
+	// 0.09 and 0.11 NM from the vertices: a minute of latitude is a mile to within 1 %.
+	{"points name waypoints", collection(pointFeature("Near", "[0,50.0015]"), pointFeature("Far", "[3,49.9981]"), lineFeature(`[[0,50],[3,50]]`, `{}`)),
 		"Near 50.000 0.000; 50.000 3.000"},
-	{"point east of its waypoint", collection(pointFeature("Near", "[0.0023,50]"), pointFeature("Far", "[3.0052,50]"), lineFeature(`[[0,50],[3,50]]`, `{}`)),
+	{"point east of its waypoint", collection(pointFeature("Near", "[0.0023,50]"), pointFeature("Far", "[3.0030,50]"), lineFeature(`[[0,50],[3,50]]`, `{}`)),
 		"Near 50.000 0.000; 50.000 3.000"},
 	{"first of two points names", collection(pointFeature("One", "[0,1]"), pointFeature("Two", "[0,1]"), lineFeature(`[[0,1],[2,3]]`, `{}`)), "One 1.000 0.000; 3.000 2.000"},
 	{"point across the antimeridian", collection(pointFeature("Line", "[-180,1]"), lineFeature(`[[170,1],[180,1],[-170,2]]`, `{}`)),
@@ -73,6 +73,8 @@ var goodRoutes = []struct{ name, in, want string }{
 	{"cut, straight, westward", multiLine(`[[[-170,10],[-180,20]],[[180,20],[170,30]]]`), "10.000 -170.000; 30.000 170.000"},
 	{"cut, bent", multiLine(`[[[170,10],[180,21]],[[-180,21],[-170,30]]]`), "10.000 170.000; 21.000 180.000; 30.000 -170.000"},
 	{"cut, bent, westward", multiLine(`[[[-170,10],[-180,21]],[[180,21],[170,30]]]`), "10.000 -170.000; 21.000 180.000; 30.000 170.000"},
+	{"cut, straight to 0.06'", multiLine(`[[[170,10],[180,20.001]],[[-180,20.001],[-170,30]]]`), "10.000 170.000; 30.000 -170.000"},
+	{"cut, bent by 0.3'", multiLine(`[[[170,10],[180,20.005]],[[-180,20.005],[-170,30]]]`), "10.000 170.000; 20.005 180.000; 30.000 -170.000"},
 	{"cut twice", multiLine(`[[[170,10],[180,20]],[[-180,20],[-170,30],[-180,40]],[[180,40],[170,50]]]`), "10.000 170.000; 30.000 -170.000; 50.000 170.000"},
 	{"one part", multiLine(`[[[0,1],[2,3]]]`), "1.000 0.000; 3.000 2.000"},
 	// Without the vertex on the cut this leg would run the other way, over Africa.

@@ -2,6 +2,7 @@ package track
 
 import (
 	"fmt"
+	"math"
 
 	"github.com/soniakeys/unit"
 	"github.com/tidwall/geodesic"
@@ -52,10 +53,20 @@ func NewLeg(from, to Waypoint, s Sailing) Leg {
 		leg.Course, leg.DistanceNM = rhumb(from.Position, to.Position)
 		return leg
 	}
-	leg.line = geodesic.WGS84.InverseLine(from.Lat.Deg(), from.Lon.Deg(), to.Lat.Deg(), to.Lon.Deg(), 0)
+	leg.line = geodesic.WGS84.InverseLine(equatorDeg(from.Lat), from.Lon.Deg(), equatorDeg(to.Lat), to.Lon.Deg(), 0)
 	leg.Course = turn(unit.AngleFromDeg(leg.line.Azi1()))
 	leg.DistanceNM = leg.line.S13() / mileM
 	return leg
+}
+
+// equatorDeg is a latitude in degrees, exactly 0 for one within 1e-12° (0.1 µm)
+// of the equator. With a minus zero there, the geodesic package gives negative
+// distances between nearly antipodal points.
+func equatorDeg(lat unit.Angle) float64 {
+	if math.Abs(lat.Deg()) < 1e-12 {
+		return 0
+	}
+	return lat.Deg()
 }
 
 // At gives position and true course nm nautical miles along the leg, nm in

@@ -72,7 +72,7 @@ func (r *Route) Sail(departure time.Time, speedKn float64, s Sailing) (*Passage,
 	hours := p.DistanceNM / speedKn
 	if hours > MaxDuration.Hours() {
 		return nil, &Error{
-			Place: "passage", Met: fmt.Sprintf("%.0f NM at %v kn take %.0f days", p.DistanceNM, speedKn, hours/24),
+			Place: "passage", Met: fmt.Sprintf("%.0f NM at %v kn take %.4g days", p.DistanceNM, speedKn, hours/24),
 			Allowed: fmt.Sprintf("at most %.0f days", MaxDuration.Hours()/24), Hint: "raise the speed or plan the voyage in parts",
 		}
 	}

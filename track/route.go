@@ -78,6 +78,12 @@ func near(a, b Position, nm float64) bool {
 	if math.Abs((a.Lat - b.Lat).Min()) > 2*nm+1e-9 {
 		return false
 	}
+	// East-west likewise, on the smaller parallel, whose arc is at most π/2 times
+	// the distance, even across a pole.
+	parallel := math.Min(a.Lat.Cos(), b.Lat.Cos())
+	if math.Abs(wrap(a.Lon-b.Lon).Min())*parallel > 2*nm+1e-9 {
+		return false
+	}
 	leg := NewLeg(Waypoint{Position: a}, Waypoint{Position: b}, GreatCircle)
 	return leg.DistanceNM <= nm
 }

@@ -15,15 +15,12 @@ import (
 	"math"
 	"math/rand/v2"
 	"os"
-	"os/exec"
 	"path/filepath"
-	"regexp"
 	"strconv"
 
+	"gloam/astro/internal/coefficients"
 	"gloam/astro/internal/vsop87"
 )
-
-const source = "astronomia@4.2.0"
 
 // reach is the greatest |τ| of the years served, 1990-2100.
 const reach = 0.1
@@ -44,20 +41,14 @@ func main() {
 }
 
 func run(src, out string) error {
-	if src == "" {
-		dir, err := os.MkdirTemp("", "vsop87")
-		if err != nil {
-			return err
-		}
-		defer os.RemoveAll(dir)
-		if o, err := exec.Command("npm", "install", "--no-save", "--prefix", dir, source).CombinedOutput(); err != nil {
-			return fmt.Errorf("npm: %w\n%s", err, o)
-		}
-		src = filepath.Join(dir, "node_modules", "astronomia")
+	data, done, err := coefficients.Folder(src)
+	if err != nil {
+		return err
 	}
+	defer done()
 	var whole, kept [len(vsop87.Names)]vsop87.Theory
 	for p, name := range vsop87.Names {
-		th, err := read(filepath.Join(src, "data", "vsop87B"+name+".js"))
+		th, err := read(filepath.Join(data, "vsop87B"+name+".js"))
 		if err != nil {
 			return err
 		}
@@ -69,19 +60,10 @@ func run(src, out string) error {
 	return os.WriteFile(out, vsop87.Pack(kept), 0o644)
 }
 
-var key = regexp.MustCompile(`(?m)^\s*([A-Za-z]+):`)
-
-// read parses a file of the form "const m = {L: {"0": [[A, B, C], ...]}, ...};
-// export default m;".
 func read(path string) (th vsop87.Theory, err error) {
-	b, err := os.ReadFile(path)
+	m, err := coefficients.Read(path)
 	if err != nil {
 		return th, err
-	}
-	body := regexp.MustCompile(`(?s)\{.*\}`).Find(b)
-	var m map[string]json.RawMessage
-	if err := json.Unmarshal(key.ReplaceAll(body, []byte(`"$1":`)), &m); err != nil {
-		return th, fmt.Errorf("%s: %w", path, err)
 	}
 	for c, name := range []string{"L", "B", "R"} {
 		var powers map[string][][3]float64

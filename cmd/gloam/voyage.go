@@ -1,0 +1,128 @@
+package main
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"time"
+
+	"github.com/soniakeys/unit"
+
+	"gloam/plan"
+	"gloam/track"
+)
+
+func readRoute(file string, stdin io.Reader) (*track.Route, error) {
+	in := stdin
+	if file != "-" {
+		f, err := os.Open(file)
+		if err != nil {
+			var p *os.PathError
+			if errors.As(err, &p) {
+				err = p.Err
+			}
+			return nil, hinted{&fileError{file, err}, "name a GeoJSON file with the route to sail"}
+		}
+		defer f.Close()
+		in = f
+	}
+	route, err := track.ReadGeoJSON(in)
+	if err != nil {
+		return nil, &fileError{file, err}
+	}
+	return route, nil
+}
+
+// plan joins flags and file; flags win.
+func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
+	passage, err := f.sail(file, r)
+	if err != nil {
+		return nil, err
+	}
+	set := f.settings(r)
+	p, err := plan.New(passage, set)
+	if err != nil {
+		return nil, err
+	}
+	p.Notes = r.Notes
+	return p, nil
+}
+
+func (f *planFlags) sail(file string, r *track.Route) (*track.Passage, error) {
+	departure, speed, how := r.Departure, r.SpeedKn, track.Rhumb
+	var err error
+	if r.Sailing != nil {
+		how = *r.Sailing
+	}
+	if f.changed("depart") {
+		if departure, err = parseInstant(f.depart); err != nil {
+			return nil, usage(fmt.Errorf("--depart %w", err))
+		}
+	}
+	if f.changed("sailing") {
+		if how, err = track.ParseSailing(f.sailing); err != nil {
+			return nil, usage(fmt.Errorf("--%w", err))
+		}
+	}
+	if f.changed("speed") {
+		speed = f.speed
+	}
+	switch {
+	case departure.IsZero():
+		err = missing("departure", "RFC 3339, as 2026-11-20T12:00:00Z", "give --depart, or the property departure of the line")
+	case speed == 0 && !f.changed("speed"):
+		err = missing("speed", "knots", "give --speed, or the property speed_kn of the line")
+	}
+	if err != nil {
+		return nil, &fileError{file, err}
+	}
+	p, err := r.Sail(departure, speed, how)
+	if err != nil {
+		return nil, f.blame(file, err)
+	}
+	return p, nil
+}
+
+func missing(place, allowed, hint string) error {
+	return &track.Error{Place: place, Met: "missing", Allowed: allowed, Hint: hint}
+}
+
+// blame puts an error of the passage to the flag that brought the value, or
+// to the file.
+func (f *planFlags) blame(file string, err error) error {
+	var t *track.Error
+	if errors.As(err, &t) {
+		for place, flag := range map[string]string{"departure": "depart", "speed": "speed"} {
+			if t.Place == place && f.changed(flag) {
+				t.Place = "--" + flag
+				return t
+			}
+		}
+	}
+	return &fileError{file, err}
+}
+
+// parseInstant reads RFC 3339, the seconds of which may be left out.
+func parseInstant(text string) (time.Time, error) {
+	for _, layout := range []string{time.RFC3339, "2006-01-02T15:04Z07:00"} {
+		if t, err := time.Parse(layout, text); err == nil {
+			return t, nil
+		}
+	}
+	return time.Time{}, fmt.Errorf("%q (a time with its zone, as 2026-11-20T12:00Z)", text)
+}
+
+func (f *planFlags) settings(r *track.Route) plan.Settings {
+	set := plan.DefaultSettings()
+	set.EyeM = f.eye
+	if r.EyeM > 0 && !f.changed("eye") {
+		set.EyeM = r.EyeM
+	}
+	set.IndexError = unit.AngleFromMin(f.index)
+	set.TemperatureC, set.PressureHPa = f.temperature, f.pressure
+	set.LowestAltitude, set.HighestAltitude = unit.AngleFromDeg(f.lowest), unit.AngleFromDeg(f.highest)
+	set.UpperSun, set.LowerSun = unit.AngleFromDeg(f.sunUpper), unit.AngleFromDeg(f.sunLower)
+	set.SightError, set.CommonError = unit.AngleFromMin(f.sightError), unit.AngleFromMin(f.commonError)
+	return set
+}
