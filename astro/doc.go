@@ -8,8 +8,7 @@
 //
 // Planets and Sun follow VSOP87B, with light time, the Sun's bending of light,
 // annual aberration, IAU 2006 precession and nutation. The Moon follows
-// Meeus, Astronomical Algorithms, ch. 47. Stars come from the Hipparcos
-// catalogue. Valid 1990 to 2100; see the README for the accuracy measured.
+// ELP/MPP02. Stars come from the Hipparcos catalogue. Valid 1990 to 2100; see the README for the accuracy measured.
 //
 // Instants are UTC taken as UT1: the difference is under 0.9 s, under 0.23'
 // of GHA.

@@ -43,7 +43,7 @@ func NewMoment(t time.Time, deltaT time.Duration) *Moment {
 func (m *Moment) Time() time.Time { return m.time }
 
 // lightDayPerAU is the light time of one AU, in days (IAU 2012 B2 and c).
-const lightDayPerAU = 149597870.7 / 299792.458 / 86400
+const lightDayPerAU = kmPerAU / 299792.458 / 86400
 
 // fromEcliptic turns from the ecliptic and equinox of VSOP87 to the equator of
 // FK5, which is that of the ICRS to 0.02" (Bretagnon & Francou 1988; the

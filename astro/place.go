@@ -3,9 +3,9 @@ package astro
 import (
 	"math"
 
-	"github.com/soniakeys/meeus/v3/moonposition"
 	"github.com/soniakeys/unit"
 
+	"gloam/astro/internal/elp"
 	"gloam/astro/internal/vsop87"
 )
 
@@ -19,8 +19,11 @@ type Place struct {
 	Illuminated float64    // lit part of the disc, 0 to 1; 1 for Sun and stars
 }
 
-// equatorAU is the Earth's equatorial radius in AU.
-const equatorAU = 6378.137 / 149597870.7
+// kmPerAU is IAU 2012 B2; equatorAU is the Earth's equatorial radius in AU.
+const (
+	kmPerAU   = 149597870.7
+	equatorAU = 6378.137 / kmPerAU
+)
 
 // Semidiameters at one AU (Sun: Auwers, as in Meeus ch. 55; planets: mean
 // radii of IAU WGCCRE 2015), and the Moon's as a part of its parallax.
@@ -96,13 +99,18 @@ func (m *Moment) star(s *star) Place {
 	return p
 }
 
+// moon takes the Moon where it was when the light left it, light time found
+// from the distance now. The Earth's pull on the frame is in the theory, which
+// is geocentric, so there is no annual aberration to add.
 func (m *Moment) moon() Place {
-	lon, lat, km := moonposition.Position(m.tt + 2451545)
-	direction := rotX(-m.obliq).apply(spherical(lon.Rad()+m.dpsi, lat.Rad()))
+	lightTime := elp.Distance(m.tt/36525) / kmPerAU * lightDayPerAU
+	geocentric := fromEcliptic.apply(vector(elp.Place((m.tt - lightTime) / 36525)))
+	km := geocentric.norm()
+	direction := m.npb.apply(geocentric.scale(1 / km))
 	p := m.place(direction)
-	p.HP = moonposition.Parallax(km)
+	p.HP = parallax(km / kmPerAU)
 	p.SD = p.HP.Mul(moonRadius)
-	phase := m.moonPhaseAngle(direction, km/149597870.7)
+	phase := m.moonPhaseAngle(direction, km/kmPerAU)
 	p.Illuminated = (1 + cos(phase)) / 2
 	p.Magnitude = moonMagnitude(phase/degree, km)
 	return p

@@ -16,7 +16,7 @@ type Day struct {
 	track.Day
 	From, To time.Time // UTC: the part of the day that the passage has
 	Events   []Event
-	Windows  []Window
+	Windows  []Window // those that begin on the day
 	Moon     MoonPhase
 	NoWindow string   // why the day has no window; empty where it has one
 	Remains  []Remain // what there is to shoot on a day without a window
@@ -53,7 +53,7 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 		for len(events) > 0 && (last || events[0].Time.Before(day.To)) {
 			day.Events, events = append(day.Events, events[0]), events[1:]
 		}
-		for len(windows) > 0 && (last || windows[0].Best.Before(day.To)) {
+		for len(windows) > 0 && (last || windows[0].Begin.Before(day.To)) {
 			day.Windows, windows = append(day.Windows, windows[0]), windows[1:]
 		}
 		day.Moon = moonPhase(middle(day.From, day.To), set)
@@ -78,7 +78,7 @@ func moonPhase(t time.Time, set Settings) MoonPhase {
 func (s *sky) noWindow(d Day, set Settings, clock *track.Clock, every []Window) string {
 	for _, w := range every {
 		if w.Begin.Before(d.To) && w.End.After(d.From) {
-			return fmt.Sprintf("the %s that reach into it are listed under %s", w.Kind.Words(), clock.Day(w.Best).Date.Format("2 January"))
+			return fmt.Sprintf("the %s of %s last into this date", w.Kind.Words(), clock.Day(w.Begin).Date.Format("2 January"))
 		}
 	}
 	end := d.Begin.Add(24 * time.Hour)

@@ -1,6 +1,9 @@
 package plan
 
 import (
+	"sort"
+	"time"
+
 	"gloam/astro"
 	"gloam/track"
 )
@@ -49,12 +52,19 @@ func (p *Plan) Events() []Event {
 	return all
 }
 
-// Candidate finds a window's candidate by its body.
-func (w *Window) Candidate(b astro.Body) *Candidate {
-	for i := range w.Bodies {
-		if w.Bodies[i].Body == b {
-			return &w.Bodies[i]
+// EventsBetween gives the events from one instant to another, in order.
+func (p *Plan) EventsBetween(from, to time.Time) []Event {
+	var all []Event
+	first := sort.Search(len(p.Days), func(i int) bool { return p.Days[i].To.After(from) })
+	for _, d := range p.Days[first:] {
+		for _, e := range d.Events {
+			if !e.Time.Before(from) && !e.Time.After(to) {
+				all = append(all, e)
+			}
+		}
+		if d.To.After(to) {
+			break
 		}
 	}
-	return nil
+	return all
 }

@@ -128,7 +128,16 @@ func (t *text) day(d *Day, clockChange string) {
 	}
 }
 
-func (t *text) ship(at time.Time) string { return t.plan.Clock.At(minuteOf(at)).Format("15:04") }
+func (t *text) clock(at time.Time) time.Time { return t.plan.Clock.At(minuteOf(at)) }
+func (t *text) ship(at time.Time) string     { return t.clock(at).Format("15:04") }
+
+// fromTo writes a span within a day, or over midnight: "22:40 to 01:24 on 17".
+func fromTo(a, b time.Time) string {
+	if a.Day() == b.Day() {
+		return a.Format("15:04") + b.Format(" to 15:04")
+	}
+	return a.Format("15:04") + b.Format(" to 15:04 on 02")
+}
 
 // utcText gives time and day of the month in UTC: "18:32 on 20".
 func utcText(at time.Time) string { return minuteOf(at).Format("15:04 on 02") }
@@ -150,11 +159,10 @@ func (t *text) noWindow(d *Day) {
 }
 
 func (t *text) window(w *Window) {
-	clock := func(at time.Time) string { return minuteOf(at).Format("15:04") }
 	t.line("")
-	t.line("%s  %s to %s ship, %s to %s UTC", t.strong(strings.ToUpper(w.Kind.Words())),
-		t.ship(w.Begin), t.ship(w.End), clock(w.Begin), clock(w.End))
-	t.line("Best at %s ship, %s UTC.  DR %v", t.ship(w.Best), clock(w.Best), w.Fix.Position)
+	t.line("%s  %s ship, %s UTC", t.strong(strings.ToUpper(w.Kind.Words())),
+		fromTo(t.clock(w.Begin), t.clock(w.End)), fromTo(minuteOf(w.Begin), minuteOf(w.End)))
+	t.line("Best at %s ship, %s UTC.  DR %v", t.ship(w.Best), minuteOf(w.Best).Format("15:04"), w.Fix.Position)
 	t.line("Course %s, %.1f kn.", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
 	if c := w.Comment(); c != "" {
 		t.line("Here: %s.", c)
@@ -189,12 +197,11 @@ func (t *text) bodies(w *Window) {
 	t.line("")
 	t.line("Body              set Hs     Zn    Hc          mag  in triads")
 	for _, c := range w.Bodies {
-		in := w.in(c.Body)
-		if in == "" && len(w.Triads) > 0 {
+		if !w.Listed(c.Body) {
 			others = append(others, fmt.Sprintf("%v %.0f° %s", c.Body, c.Altitude.Deg(), dm.Bearing(c.Azimuth)))
 			continue
 		}
-		t.line("%-16s  %s  %s  %s  %5.1f  %s", c.Label(), dm.Altitude(c.Preset), dm.Bearing(c.Azimuth), dm.Altitude(c.Altitude), c.Magnitude, in)
+		t.line("%-16s  %s  %s  %s  %5.1f  %s", c.Label(), dm.Altitude(c.Preset), dm.Bearing(c.Azimuth), dm.Altitude(c.Altitude), c.Magnitude, w.in(c.Body))
 	}
 	if len(others) > 0 {
 		sort.Strings(others)
@@ -209,6 +216,9 @@ func (c Candidate) Label() string {
 	}
 	return fmt.Sprintf("%v %v limb", c.Body, c.Limb)
 }
+
+// Listed tells whether a body belongs to a triad listed, or there is none.
+func (w *Window) Listed(b astro.Body) bool { return len(w.Triads) == 0 || w.in(b) != "" }
 
 // in lists the numbers of the triads a body belongs to.
 func (w *Window) in(b astro.Body) string {

@@ -24,7 +24,7 @@ const (
 
 // Window is a span of time in which star sights can be taken.
 type Window struct {
-	ID               string // ship's date and kind; the same for a passage that is planned again
+	ID               string // ship's date at Begin, and kind; the same when the passage is planned again
 	Kind             WindowKind
 	Begin, End, Best time.Time   // UTC
 	Fix              track.Fix   // the ship at Best
@@ -86,7 +86,7 @@ func nameWindows(windows []Window, clock *track.Clock) {
 	seen := map[string]int{}
 	for i := range windows {
 		w := &windows[i]
-		w.ID = clock.Day(w.Best).Date.Format(time.DateOnly) + "-" + string(w.Kind)
+		w.ID = clock.Day(w.Begin).Date.Format(time.DateOnly) + "-" + string(w.Kind)
 		seen[w.ID]++
 		if n := seen[w.ID]; n > 1 {
 			w.ID = fmt.Sprintf("%s-%d", w.ID, n)

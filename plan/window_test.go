@@ -121,7 +121,7 @@ func TestDaysWithoutWindowSayWhy(t *testing.T) {
 		why       string
 		remains   string
 	}{
-		{"after a white night", 58, "2026-06-20T20:00:00Z", 0.5, "the midnight stars that reach into it are listed under 20 June", "Sun"},
+		{"after a white night", 58, "2026-06-20T20:00:00Z", 0.5, "the midnight stars of 20 June last into this date", "Sun"},
 		{"polar day", 78, "2026-06-20T00:00:00Z", 1, "the Sun does not sink to -6° (lowest 11°", "Sun"},
 		{"polar night", 85, "2026-12-20T00:00:00Z", 1, "the Sun does not rise to -12° (highest -18°", "Moon"},
 		{"a forenoon", 40, "2026-11-20T09:00:00Z", 0.1, "the day's twilights fall outside the passage", "Sun"},

@@ -47,9 +47,9 @@ func clockChange(before, now track.Day) string {
 func (m MoonPhase) Words() string {
 	percent := int(100*m.Illuminated + 0.5)
 	switch {
-	case percent <= 1:
+	case percent == 0:
 		return "new"
-	case percent >= 99:
+	case percent == 100:
 		return "full"
 	case m.Waxing:
 		return fmt.Sprintf("%d %% lit, waxing", percent)

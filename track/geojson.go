@@ -299,7 +299,7 @@ func (f *feature) number(key string) (float64, error) {
 }
 
 func (f *feature) bad(key, allowed string) error {
-	return &Error{f.place + " property " + key, shorten(string(f.properties[key])), allowed, "mend the property in the file, or give the matching flag"}
+	return &Error{f.place + " property " + key, shorten(string(f.properties[key])), allowed, "mend the property in the file, or take it out and give the flag"}
 }
 
 // shorten keeps a value met in a file fit for one line of an error.

@@ -1,0 +1,103 @@
+package calendars
+
+import (
+	"fmt"
+	"strings"
+	"time"
+	"unicode"
+
+	"gloam/plan"
+	"gloam/track/dm"
+)
+
+// summary is the event's title: the kind and the bodies of the best triad, or
+// what the window lacks.
+func summary(w *plan.Window) string {
+	kind := capital(w.Kind.Words())
+	if len(w.Triads) > 0 {
+		return kind + ": " + w.Triads[0].Names()
+	}
+	return kind + ": " + w.Comment()
+}
+
+// text gathers the lines of a description, kept short for a phone.
+type text struct {
+	strings.Builder
+	plan *plan.Plan
+}
+
+func (t *text) line(format string, args ...any) { fmt.Fprintf(t, format+"\n", args...) }
+
+// times gives an instant by the ship's clock and in UTC.
+func (t *text) times(at time.Time) string {
+	at = at.Round(time.Minute)
+	return t.plan.Clock.At(at).Format("15:04") + " ship " + at.UTC().Format("15:04") + " UTC"
+}
+
+func description(p *plan.Plan, d *plan.Day, w *plan.Window) string {
+	t := &text{plan: p}
+	t.line("%s", d.Date.Format("Monday 2 January 2006"))
+	t.line("Ship's time %s", plan.ZoneText(d.Offset))
+	t.line("")
+	t.line("Begin %s", t.times(w.Begin))
+	t.line("Best  %s", t.times(w.Best))
+	t.line("End   %s", t.times(w.End))
+	t.line("DR %v", w.Fix.Position)
+	t.line("Course %s, %.1f kn", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
+	t.line("")
+	t.sun(w)
+	t.bodies(w)
+	t.line("")
+	for _, c := range plan.Cautions {
+		t.line("%s", c)
+	}
+	return strings.TrimSpace(t.String())
+}
+
+// nearby is how far from a window an event still belongs to it.
+const nearby = 2 * time.Hour
+
+// sun lists the events close to the window.
+func (t *text) sun(w *plan.Window) {
+	for _, e := range t.plan.EventsBetween(w.Begin.Add(-nearby), w.End.Add(nearby)) {
+		t.line("%s %s", capital(e.Kind.Words()), t.times(e.Time))
+	}
+}
+
+func capital(words string) string { return strings.ToUpper(words[:1]) + words[1:] }
+
+// bodies lists the best triad and what to set for the bodies of all triads
+// listed, or for all there are.
+func (t *text) bodies(w *plan.Window) {
+	t.line("")
+	if len(w.Triads) == 0 {
+		t.line("%s", w.Comment())
+	} else {
+		best := w.Triads[0]
+		ellipse := best.Covariance.Ellipse()
+		t.line("Best: %s", best.Names())
+		t.line("Gaps %.0f° to %.0f°, expected error %.2f NM", best.LeastGap.Deg(), best.GreatestGap.Deg(), best.Covariance.ExpectedError())
+		t.line("95 %% ellipse %.1f x %.1f NM along %s", ellipse.SemiMajorNM, ellipse.SemiMinorNM, dm.Bearing(ellipse.Axis))
+	}
+	t.line("")
+	t.line("Set Hs, look along Zn (Hc, magnitude):")
+	for _, c := range w.Bodies {
+		if w.Listed(c.Body) {
+			t.line("%s %s Zn %s (%s, %.1f)", c.Label(), dm.Altitude(c.Preset), dm.Bearing(c.Azimuth), dm.Altitude(c.Altitude), c.Magnitude)
+		}
+	}
+}
+
+// clean makes a text fit for a calendar: valid UTF-8, line ends as LF, no
+// other control characters but the tabulator, no blanks at the ends.
+func clean(s string) string {
+	s = strings.ToValidUTF8(s, "\uFFFD")
+	s = strings.NewReplacer("\r\n", "\n", "\r", "\n", "\u0085", "\n", "\u2028", "\n", "\u2029", "\n").Replace(s)
+	s = strings.Map(func(r rune) rune {
+		if unicode.IsControl(r) && r != '\n' && r != '\t' {
+			return -1
+		}
+		return r
+	}, s)
+	return strings.TrimSpace(s)
+}
