@@ -8,7 +8,10 @@ package coefficients
 
 import (
 	"encoding/json"
+	"flag"
 	"fmt"
+	"log"
+	"math"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -17,23 +20,37 @@ import (
 
 const source = "astronomia@4.2.0"
 
-// Folder gives the folder of an unpacked package: src, or where that is empty
-// a temporary one filled with npm. The function returned removes what was
-// made.
-func Folder(src string) (data string, done func(), err error) {
-	if src != "" {
-		return filepath.Join(src, "data"), func() {}, nil
+// Main is the main function of a packing program: it hands the folder of the
+// coefficient files to pack and writes what that gives to the file of the flag
+// -out. The folder is that of an unpacked package (-src), or a temporary one
+// filled with npm.
+func Main(pack func(folder string) ([]byte, error)) {
+	log.SetFlags(0)
+	src := flag.String("src", "", "unpacked npm package; fetched with npm where empty")
+	out := flag.String("out", "", "file to write")
+	flag.Parse()
+	if err := run(*src, *out, pack); err != nil {
+		log.Fatal(err)
 	}
-	dir, err := os.MkdirTemp("", "coefficients")
+}
+
+func run(src, out string, pack func(string) ([]byte, error)) error {
+	if src == "" {
+		dir, err := os.MkdirTemp("", "coefficients")
+		if err != nil {
+			return err
+		}
+		defer os.RemoveAll(dir)
+		if out, err := exec.Command("npm", "install", "--no-save", "--prefix", dir, source).CombinedOutput(); err != nil {
+			return fmt.Errorf("npm: %w\n%s", err, out)
+		}
+		src = filepath.Join(dir, "node_modules", "astronomia")
+	}
+	packed, err := pack(filepath.Join(src, "data"))
 	if err != nil {
-		return "", nil, err
+		return err
 	}
-	done = func() { os.RemoveAll(dir) }
-	if out, err := exec.Command("npm", "install", "--no-save", "--prefix", dir, source).CombinedOutput(); err != nil {
-		done()
-		return "", nil, fmt.Errorf("npm: %w\n%s", err, out)
-	}
-	return filepath.Join(dir, "node_modules", "astronomia", "data"), done, nil
+	return os.WriteFile(out, packed, 0o644)
 }
 
 var (
@@ -53,4 +70,10 @@ func Read(path string) (map[string]json.RawMessage, error) {
 		return nil, fmt.Errorf("%s: %w", path, err)
 	}
 	return m, nil
+}
+
+// Apart is the angle between two directions, in minutes of arc.
+func Apart(a, b [3]float64) float64 {
+	across := math.Hypot(math.Hypot(a[1]*b[2]-a[2]*b[1], a[2]*b[0]-a[0]*b[2]), a[0]*b[1]-a[1]*b[0])
+	return math.Atan2(across, a[0]*b[0]+a[1]*b[1]+a[2]*b[2]) * 180 / math.Pi * 60
 }

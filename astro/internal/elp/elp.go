@@ -3,15 +3,17 @@
 // geocentric places of the Moon referred to the inertial mean ecliptic and
 // equinox of J2000.
 //
-// The series are cut: terms below a limit are left out; gen prints how far
-// that moves the Moon.
+// The series are cut: terms below a limit are left out, and only large terms
+// keep what bends their phase. Against the whole series the places of
+// 1990-2100 keep within 0.0024'; gen prints the figure.
 package elp
 
 import (
 	_ "embed"
-	"encoding/binary"
 	"math"
 	"sync"
+
+	"gloam/astro/internal/series"
 )
 
 //go:generate go run ./gen -out elpmpp02.bin
@@ -19,24 +21,39 @@ import (
 //go:embed elpmpp02.bin
 var packed []byte
 
-// Degree is that of the polynomial in the phase of a term.
-const Degree = 4
+// Polynomial is c0 + c1 t + ... + c4 t⁴.
+type Polynomial [5]float64
 
-// Term is A sin(P0 + P1 t + ... + P4 t⁴), with t in Julian centuries from
-// J2000.
-type Term struct {
-	A float64
-	P [Degree + 1]float64
+// At evaluates the polynomial.
+func (c *Polynomial) At(t float64) float64 {
+	return c[0] + t*(c[1]+t*(c[2]+t*(c[3]+t*c[4])))
 }
 
-// Series is the terms of each power of t.
-type Series [][]Term
+// Bent is a term A cos(phase) whose phase is a polynomial in t.
+type Bent struct {
+	A     float64
+	Phase Polynomial
+}
 
-// Theory is the mean longitude (rad, a polynomial in t) and the series of
-// longitude and latitude (arcseconds) and distance (km).
+// Coordinate is the sum of terms with bent and with straight phases.
+type Coordinate struct {
+	Bent     []Bent
+	Straight series.Series
+}
+
+func (c *Coordinate) sum(t float64) float64 {
+	sum := c.Straight.Sum(t)
+	for i := range c.Bent {
+		sum += c.Bent[i].A * math.Cos(c.Bent[i].Phase.At(t))
+	}
+	return sum
+}
+
+// Theory is the mean longitude (rad) and the series of longitude and latitude
+// (arcseconds) and distance (km) by t, Julian centuries from J2000.
 type Theory struct {
-	Mean   [Degree + 1]float64
-	Series [3]Series
+	Mean        Polynomial
+	Coordinates [3]Coordinate
 }
 
 var theory = sync.OnceValue(func() *Theory { return unpack(packed) })
@@ -46,15 +63,15 @@ var theory = sync.OnceValue(func() *Theory { return unpack(packed) })
 func Place(t float64) [3]float64 { return theory().Place(t) }
 
 // Distance gives the Moon's distance in kilometres alone.
-func Distance(t float64) float64 { return theory().Series[2].eval(t) }
+func Distance(t float64) float64 { return theory().Coordinates[2].sum(t) }
 
 const arcsecond = math.Pi / 180 / 3600
 
 // Place evaluates the theory at t.
 func (th *Theory) Place(t float64) [3]float64 {
-	lon := polynomial(th.Mean, t) + arcsecond*th.Series[0].eval(t)
-	lat := arcsecond * th.Series[1].eval(t)
-	r := th.Series[2].eval(t)
+	lon := th.Mean.At(t) + arcsecond*th.Coordinates[0].sum(t)
+	lat := arcsecond * th.Coordinates[1].sum(t)
+	r := th.Coordinates[2].sum(t)
 	sl, cl := math.Sincos(lon)
 	sb, cb := math.Sincos(lat)
 	return toJ2000(t, [3]float64{r * cb * cl, r * cb * sl, r * sb})
@@ -74,75 +91,36 @@ func toJ2000(t float64, v [3]float64) [3]float64 {
 	}
 }
 
-func polynomial(c [Degree + 1]float64, t float64) float64 {
-	return c[0] + t*(c[1]+t*(c[2]+t*(c[3]+t*c[4])))
-}
-
-func (s Series) eval(t float64) (sum float64) {
-	for k := len(s) - 1; k >= 0; k-- {
-		a := 0.0
-		for i := range s[k] {
-			a += s[k][i].A * math.Sin(polynomial(s[k][i].P, t))
-		}
-		sum = sum*t + a
-	}
-	return sum
-}
-
-// unpack reads the packed file: the mean longitude, then for each series the
-// number of powers, and for each power the number of terms and the terms, all
-// little endian: counts as uint16, numbers as float64.
-func unpack(b []byte) *Theory {
+// unpack reads the packed file: the mean longitude, then for each coordinate
+// the count of bent terms, these, and the straight series.
+func unpack(b series.Packed) *Theory {
 	th := &Theory{}
-	float := func() float64 {
-		x := math.Float64frombits(binary.LittleEndian.Uint64(b))
-		b = b[8:]
-		return x
-	}
-	short := func() int {
-		n := binary.LittleEndian.Uint16(b)
-		b = b[2:]
-		return int(n)
-	}
-	floats := func() (c [Degree + 1]float64) {
-		for i := range c {
-			c[i] = float()
+	b.Floats(th.Mean[:])
+	for i := range th.Coordinates {
+		c := &th.Coordinates[i]
+		c.Bent = make([]Bent, b.Count())
+		for j := range c.Bent {
+			var a [1]float64
+			b.Floats(a[:])
+			c.Bent[j].A = a[0]
+			b.Floats(c.Bent[j].Phase[:])
 		}
-		return c
-	}
-	th.Mean = floats()
-	for c := range th.Series {
-		th.Series[c] = make(Series, short())
-		for k := range th.Series[c] {
-			terms := make([]Term, short())
-			for i := range terms {
-				terms[i] = Term{float(), floats()}
-			}
-			th.Series[c][k] = terms
-		}
+		c.Straight = b.Series()
 	}
 	return th
 }
 
 // Pack writes a theory in the form that the package embeds.
-func Pack(th Theory) []byte {
-	var b []byte
-	short := func(n int) { b = binary.LittleEndian.AppendUint16(b, uint16(n)) }
-	floats := func(c ...float64) {
-		for _, x := range c {
-			b = binary.LittleEndian.AppendUint64(b, math.Float64bits(x))
+func (th *Theory) Pack() []byte {
+	var b series.Packed
+	b.PutFloats(th.Mean[:]...)
+	for _, c := range th.Coordinates {
+		b.PutCount(len(c.Bent))
+		for _, x := range c.Bent {
+			b.PutFloats(x.A)
+			b.PutFloats(x.Phase[:]...)
 		}
-	}
-	floats(th.Mean[:]...)
-	for _, s := range th.Series {
-		short(len(s))
-		for _, terms := range s {
-			short(len(terms))
-			for _, t := range terms {
-				floats(t.A)
-				floats(t.P[:]...)
-			}
-		}
+		b.PutSeries(c.Straight)
 	}
 	return b
 }

@@ -1,103 +1,84 @@
 // Command gen builds the table that package elp embeds, from the ELP/MPP02
-// coefficients in the npm package astronomia 4.2.0 (MIT).
+// coefficients in the npm package astronomia 4.2.0 (MIT; made from the theory's
+// own, Chapront & Francou).
 //
-// It fetches the package with npm into a temporary folder, or reads an
-// unpacked one with -src. It prints how many terms are kept and how far the
-// cut series strays from the whole one.
+// It prints how many terms are kept and how far the cut series strays from the
+// whole one.
 package main
 
 import (
 	"encoding/json"
-	"flag"
 	"fmt"
-	"log"
 	"math"
 	"math/rand/v2"
-	"os"
 	"path/filepath"
 	"strconv"
 
 	"gloam/astro/internal/coefficients"
 	"gloam/astro/internal/elp"
+	"gloam/astro/internal/series"
 )
 
 // reach is the greatest |t| of the years served, 1990-2100.
 const reach = 1.0
 
 // limits are the least amplitudes kept: longitude and latitude in arcseconds,
-// distance in kilometres.
-var limits = [3]float64{0.003, 0.003, 0.3}
+// distance in kilometres. Terms above the limits in bent keep the bend of
+// their phase, which by 2100 comes to 0.0004 radians at most.
+var (
+	limits = [3]float64{0.003, 0.003, 0.3}
+	bent   = [3]float64{0.5, 0.5, 100}
+)
 
-func main() {
-	log.SetFlags(0)
-	src := flag.String("src", "", "unpacked npm package; fetched with npm where empty")
-	out := flag.String("out", "elpmpp02.bin", "file to write")
-	flag.Parse()
-	if err := run(*src, *out); err != nil {
-		log.Fatal("gen: ", err)
-	}
-}
+func main() { coefficients.Main(pack) }
 
-func run(src, out string) error {
-	data, done, err := coefficients.Folder(src)
-	if err != nil {
-		return err
-	}
-	defer done()
-	whole, err := read(filepath.Join(data, "elpMppDe.js"))
-	if err != nil {
-		return err
-	}
-	kept := whole
-	for c, s := range whole.Series {
-		kept.Series[c] = cut(s, limits[c])
-	}
-	seconds, km := worst(&whole, &kept)
-	fmt.Printf("Moon %d of %d terms, worst %.5f' and %.3f km\n", terms(kept), terms(whole), seconds, km)
-	return os.WriteFile(out, elp.Pack(kept), 0o644)
-}
-
-func read(path string) (th elp.Theory, err error) {
+func pack(data string) ([]byte, error) {
+	path := filepath.Join(data, "elpMppDe.js")
 	m, err := coefficients.Read(path)
 	if err != nil {
-		return th, err
+		return nil, err
 	}
-	if err := json.Unmarshal(m["W1"], &th.Mean); err != nil {
-		return th, fmt.Errorf("%s: W1: %w", path, err)
+	var whole, kept elp.Theory
+	if err := json.Unmarshal(m["W1"], &whole.Mean); err != nil {
+		return nil, fmt.Errorf("%s: W1: %w", path, err)
 	}
+	kept.Mean = whole.Mean
 	for c, name := range []string{"L", "B", "R"} {
-		var powers map[string][][2 + elp.Degree]float64
-		if err := json.Unmarshal(m[name], &powers); err != nil {
-			return th, fmt.Errorf("%s: %s: %w", path, name, err)
+		if whole.Coordinates[c], err = read(m[name], 0); err != nil {
+			return nil, fmt.Errorf("%s: %s: %w", path, name, err)
 		}
-		th.Series[c] = make(elp.Series, len(powers))
-		for k := range th.Series[c] {
-			for _, row := range powers[strconv.Itoa(k)] {
-				th.Series[c][k] = append(th.Series[c][k], elp.Term{A: row[0], P: [elp.Degree + 1]float64(row[1:])})
+		kept.Coordinates[c], _ = read(m[name], bent[c])
+		kept.Coordinates[c].Straight = kept.Coordinates[c].Straight.Cut(limits[c], reach)
+	}
+	angle, km := worst(&whole, &kept)
+	fmt.Printf("Moon %d of %d terms, worst %.5f' and %.2f km\n", terms(&kept), terms(&whole), angle, km)
+	return kept.Pack(), nil
+}
+
+// read reads one coordinate. Rows are A and the phase of a sine; those of the
+// first power that reach the limit keep a bent phase.
+func read(raw json.RawMessage, limit float64) (c elp.Coordinate, err error) {
+	var powers map[string][][6]float64
+	if err := json.Unmarshal(raw, &powers); err != nil {
+		return c, err
+	}
+	c.Straight = make(series.Series, len(powers))
+	for k := range c.Straight {
+		for _, row := range powers[strconv.Itoa(k)] {
+			row[1] -= math.Pi / 2 // sine to cosine
+			if k == 0 && math.Abs(row[0]) >= limit {
+				c.Bent = append(c.Bent, elp.Bent{A: row[0], Phase: elp.Polynomial(row[1:])})
+			} else {
+				c.Straight[k] = append(c.Straight[k], series.Term{A: row[0], B: row[1], C: row[2]})
 			}
 		}
 	}
-	return th, nil
+	return c, nil
 }
 
-// cut keeps the terms that can reach the limit within the years served.
-func cut(s elp.Series, limit float64) elp.Series {
-	kept := make(elp.Series, len(s))
-	for k, terms := range s {
-		for _, t := range terms {
-			if math.Abs(t.A)*math.Pow(reach, float64(k)) >= limit {
-				kept[k] = append(kept[k], t)
-			}
-		}
-	}
-	return kept
-}
-
-func terms(th elp.Theory) (n int) {
-	for _, s := range th.Series {
-		for _, power := range s {
-			n += len(power)
-		}
+func terms(th *elp.Theory) (n int) {
+	for _, c := range th.Coordinates {
+		n += len(c.Bent) + c.Straight.Len()
 	}
 	return n
 }
@@ -109,10 +90,8 @@ func worst(whole, kept *elp.Theory) (angle, km float64) {
 	for range 3000 {
 		t := -0.1 + 1.1*rng.Float64()
 		a, b := whole.Place(t), kept.Place(t)
-		across := math.Hypot(math.Hypot(a[1]*b[2]-a[2]*b[1], a[2]*b[0]-a[0]*b[2]), a[0]*b[1]-a[1]*b[0])
-		dot := a[0]*b[0] + a[1]*b[1] + a[2]*b[2]
-		angle = math.Max(angle, math.Atan2(across, dot)*180/math.Pi*60)
-		km = math.Max(km, math.Abs(math.Sqrt(dot/(length(b)/length(a)))-length(b)))
+		angle = math.Max(angle, coefficients.Apart(a, b))
+		km = math.Max(km, math.Abs(length(a)-length(b)))
 	}
 	return angle, km
 }
