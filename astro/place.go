@@ -5,7 +5,6 @@ import (
 
 	"github.com/soniakeys/unit"
 
-	"gloam/astro/internal/elp"
 	"gloam/astro/internal/vsop87"
 )
 
@@ -32,8 +31,6 @@ var semidiameters = [...]float64{
 	Jupiter: 96.39 * arcsecond, Saturn: 80.29 * arcsecond,
 }
 
-const moonRadius = 0.2724 // of the Earth's
-
 // Place gives the apparent place of a body. For Aries only GHA and Dec mean
 // anything. Accuracy, 2000-2049, as measured against the JPL ephemeris DE431:
 // see the README.
@@ -42,19 +39,13 @@ func (m *Moment) Place(b Body) Place {
 	case ClassPoint:
 		return Place{GHA: circle(m.gast)}
 	case ClassMoon:
-		return m.moon()
+		return m.moon().litBy(m.sun())
 	case ClassStar:
 		return m.star(&catalogue()[b-firstStar])
 	case ClassSun:
 		return m.sun()
 	}
 	return m.planet(b)
-}
-
-// place sets hour angle and declination from a direction on the true equator.
-func (m *Moment) place(direction vector) Place {
-	ra, dec := direction.lonLat()
-	return Place{GHA: m.hourAngle(ra), Dec: unit.Angle(dec), Illuminated: 1}
 }
 
 func (m *Moment) sun() Place {
@@ -97,29 +88,6 @@ func (m *Moment) star(s *star) Place {
 	p := m.place(m.apparent(direction, direction))
 	p.Magnitude = s.magnitude
 	return p
-}
-
-// moon takes the Moon where it was when the light left it, light time found
-// from the distance now. The Earth's pull on the frame is in the theory, which
-// is geocentric, so there is no annual aberration to add.
-func (m *Moment) moon() Place {
-	lightTime := elp.Distance(m.tt/36525) / kmPerAU * lightDayPerAU
-	geocentric := fromEcliptic.apply(vector(elp.Place((m.tt - lightTime) / 36525)))
-	km := geocentric.norm()
-	direction := m.npb.apply(geocentric.scale(1 / km))
-	p := m.place(direction)
-	p.HP = parallax(km / kmPerAU)
-	p.SD = p.HP.Mul(moonRadius)
-	phase := m.moonPhaseAngle(direction, km/kmPerAU)
-	p.Illuminated = (1 + cos(phase)) / 2
-	p.Magnitude = moonMagnitude(phase/degree, km)
-	return p
-}
-
-// moonPhaseAngle is the angle at the Moon between Sun and Earth.
-func (m *Moment) moonPhaseAngle(moon vector, distance float64) float64 {
-	toSun := m.npb.apply(m.earth).scale(-1).sub(moon.scale(distance))
-	return math.Acos(toSun.unit().dot(moon.scale(-1)))
 }
 
 func parallax(distance float64) unit.Angle { return unit.Angle(math.Asin(equatorAU / distance)) }

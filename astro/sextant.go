@@ -62,9 +62,14 @@ func (s Sextant) Observed(hs unit.Angle, p Place, limb Limb) unit.Angle {
 // Preset is the inverse of Observed: the Hs to set for a body whose centre has
 // the computed altitude hc, within 0.001' for altitudes above 1°.
 func (s Sextant) Preset(hc unit.Angle, p Place, limb Limb) unit.Angle {
+	const close = 1e-8 // radians: 0.00003'
 	hs := hc
-	for range 8 {
-		hs += hc - s.Observed(hs, p, limb)
+	for range 10 {
+		step := hc - s.Observed(hs, p, limb)
+		hs += step
+		if math.Abs(step.Rad()) < close {
+			break
+		}
 	}
 	return hs
 }

@@ -26,17 +26,17 @@ var shootable = append(append([]astro.Body{astro.Moon}, astro.Planets()...), ast
 
 // candidates finds the bodies between the altitude limits, in order of
 // azimuth.
-func (set Settings) candidates(m *astro.Moment, at track.Position) []Candidate {
+func (set Settings) candidates(sky astro.Sky, at track.Position) []Candidate {
 	var all []Candidate
 	for _, b := range shootable {
-		p := m.Place(b)
+		p := sky.Place(b)
 		hc, zn := p.From(at.Lat, at.Lon)
 		if hc < set.LowestAltitude || hc > set.HighestAltitude {
 			continue
 		}
 		c := Candidate{Body: b, Place: p, Altitude: hc, Azimuth: zn, Error: set.sightError(hc)}
 		if b == astro.Moon {
-			c.Limb = m.BrightLimb(b, at.Lat, at.Lon)
+			c.Limb = astro.BrightLimb(sky, b, at.Lat, at.Lon)
 		}
 		c.Preset = set.Preset(hc, p, c.Limb)
 		all = append(all, c)

@@ -56,7 +56,7 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 		for len(windows) > 0 && (last || windows[0].Begin.Before(day.To)) {
 			day.Windows, windows = append(day.Windows, windows[0]), windows[1:]
 		}
-		day.Moon = moonPhase(middle(day.From, day.To), set)
+		day.Moon = s.moonPhase(middle(day.From, day.To))
 		if len(day.Windows) == 0 {
 			day.NoWindow = s.noWindow(day, set, clock, every)
 			day.Remains = s.remains(day, set)
@@ -66,10 +66,9 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 	return all
 }
 
-func moonPhase(t time.Time, set Settings) MoonPhase {
-	lit := func(t time.Time) float64 { return astro.NewMoment(t, set.DeltaT(t)).Place(astro.Moon).Illuminated }
-	now := lit(t)
-	return MoonPhase{now, lit(t.Add(time.Hour)) > now}
+func (s *sky) moonPhase(t time.Time) MoonPhase {
+	lit := func(t time.Time) float64 { return s.ephemeris.Place(astro.Moon, t).Illuminated }
+	return MoonPhase{lit(t), lit(t.Add(time.Hour)) > lit(t)}
 }
 
 // noWindow says in words why a day has no window: a window of another date
@@ -111,7 +110,7 @@ func (s *sky) remains(d Day, set Settings) []Remain {
 		if unit.Angle(value) < set.LowestAltitude {
 			continue
 		}
-		if b == astro.Venus && astro.NewMoment(at, set.DeltaT(at)).Elongation(b) < venusElongation {
+		if b == astro.Venus && astro.Elongation(s.ephemeris.At(at), b) < venusElongation {
 			continue
 		}
 		all = append(all, Remain{b, at, unit.Angle(value)})

@@ -48,37 +48,34 @@ func moonriseAltitude(p astro.Place) unit.Angle {
 	return p.HP.Mul(0.7275) - unit.AngleFromMin(34)
 }
 
-// eventSearches are the altitudes searched and what crossing them is called.
-var eventSearches = []struct {
-	body            astro.Body
-	level           func(astro.Place) unit.Angle
+// sunEvents are the Sun's altitudes searched and what crossing them is called.
+var sunEvents = []struct {
+	level           unit.Angle
 	rising, sinking EventKind
 }{
-	{astro.Sun, fixed(sunriseAltitude), Sunrise, Sunset},
-	{astro.Sun, fixed(civilTwilight), CivilDawn, CivilDusk},
-	{astro.Sun, fixed(nauticalTwilight), NauticalDawn, NauticalDusk},
-	{astro.Moon, moonriseAltitude, Moonrise, Moonset},
+	{sunriseAltitude, Sunrise, Sunset},
+	{civilTwilight, CivilDawn, CivilDusk},
+	{nauticalTwilight, NauticalDawn, NauticalDusk},
 }
 
 // events finds all events of the passage, in order of time. See [crossings]
 // for why none can be missed.
 func (s *sky) events() []Event {
 	var all []Event
-	add := func(kind EventKind, t time.Time) {
-		all = append(all, Event{kind, t, s.passage.At(t).Position})
-	}
-	for _, e := range eventSearches {
-		for _, c := range s.crossings(s.above(e.body, e.level)) {
+	add := func(found []crossing, rising, sinking EventKind) {
+		for _, c := range found {
+			kind := sinking
 			if c.rising {
-				add(e.rising, c.time)
-			} else {
-				add(e.sinking, c.time)
+				kind = rising
 			}
+			all = append(all, Event{kind, c.time, s.passage.At(c.time).Position})
 		}
 	}
-	for _, t := range s.meridianPassages() {
-		add(MeridianPassage, t)
+	for _, e := range sunEvents {
+		add(s.sunCrossings(e.level), e.rising, e.sinking)
 	}
+	add(s.crossings(s.above(astro.Moon, moonriseAltitude)), Moonrise, Moonset)
+	add(s.meridianPassages(), MeridianPassage, MeridianPassage)
 	sort.SliceStable(all, func(i, j int) bool { return all[i].Time.Before(all[j].Time) })
 	return all
 }
@@ -89,20 +86,20 @@ const poleMiss = 1e-5
 
 // meridianPassages finds when the Sun's LHA is zero. It searches cos φ cos δ
 // sin LHA, which stays smooth even where longitude runs wild.
-func (s *sky) meridianPassages() []time.Time {
+func (s *sky) meridianPassages() []crossing {
 	lha := func(t time.Time) (unit.Angle, float64) {
 		fix := s.passage.At(t)
-		p := s.tables[astro.Sun].Place(t)
+		p := s.ephemeris.Place(astro.Sun, t)
 		return p.GHA + fix.Lon, fix.Lat.Cos() * p.Dec.Cos()
 	}
-	var times []time.Time
+	var passages []crossing
 	for _, c := range s.crossings(func(t time.Time) float64 {
 		angle, scale := lha(t)
 		return scale * angle.Sin()
 	}) {
 		if angle, scale := lha(c.time); angle.Cos() > 0 && scale > poleMiss {
-			times = append(times, c.time)
+			passages = append(passages, c)
 		}
 	}
-	return times
+	return passages
 }

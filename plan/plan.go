@@ -4,7 +4,6 @@ import (
 	"sort"
 	"time"
 
-	"gloam/astro"
 	"gloam/track"
 )
 
@@ -28,7 +27,7 @@ func New(p *track.Passage, set Settings) (*Plan, error) {
 	nameWindows(windows, clock)
 	for i := range windows {
 		w := &windows[i]
-		w.Bodies = set.candidates(astro.NewMoment(w.Best, set.DeltaT(w.Best)), w.Fix.Position)
+		w.Bodies = set.candidates(s.ephemeris.At(w.Best), w.Fix.Position)
 		w.Triads = triads(w.Bodies, set.CommonError)
 	}
 	return &Plan{Passage: p, Clock: clock, Settings: set, Days: s.days(clock, set, s.events(), windows)}, nil

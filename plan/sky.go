@@ -12,16 +12,16 @@ import (
 
 // sky is the Sun and the Moon as they stand over the moving ship.
 type sky struct {
-	passage *track.Passage
-	tables  map[astro.Body]*astro.Table
-	bends   []float64 // per leg: see legBend
+	passage   *track.Passage
+	ephemeris *astro.Ephemeris
+	bends     []float64                 // per leg: see legBend
+	sun       map[unit.Angle][]crossing // of the altitudes searched so far
 }
 
 func newSky(p *track.Passage, deltaT func(time.Time) time.Duration) *sky {
-	s := &sky{passage: p, tables: map[astro.Body]*astro.Table{}}
-	for _, b := range []astro.Body{astro.Sun, astro.Moon, astro.Venus} {
-		s.tables[b] = astro.NewTable(b, p.Departure, p.Arrival, deltaT)
-	}
+	// A day more at either end, for ship's days that the passage cuts.
+	const margin = 24 * time.Hour
+	s := &sky{passage: p, sun: map[unit.Angle][]crossing{}, ephemeris: astro.NewEphemeris(p.Departure.Add(-margin), p.Arrival.Add(margin), deltaT)}
 	for i := range p.Legs {
 		s.bends = append(s.bends, legBend(&p.Legs[i], p.SpeedKn))
 	}
@@ -31,7 +31,7 @@ func newSky(p *track.Passage, deltaT func(time.Time) time.Duration) *sky {
 // place gives a body's place and its altitude from the ship.
 func (s *sky) place(b astro.Body, t time.Time) (p astro.Place, hc, zn unit.Angle) {
 	fix := s.passage.At(t)
-	p = s.tables[b].Place(t)
+	p = s.ephemeris.Place(b, t)
 	hc, zn = p.From(fix.Lat, fix.Lon)
 	return p, hc, zn
 }
@@ -63,6 +63,14 @@ func (s *sky) crossings(f func(time.Time) float64) []crossing {
 		all = append(all, crossings(f, s.passage.ETD(i), s.passage.ETD(i+1), s.bends[i])...)
 	}
 	return all
+}
+
+// sunCrossings gives when the Sun crosses an altitude, searched once for each.
+func (s *sky) sunCrossings(level unit.Angle) []crossing {
+	if _, done := s.sun[level]; !done {
+		s.sun[level] = s.crossings(s.above(astro.Sun, fixed(level)))
+	}
+	return s.sun[level]
 }
 
 const (

@@ -38,12 +38,12 @@ func (s *sky) windows(set Settings) []Window {
 	p := s.passage
 	marks := []time.Time{p.Departure, p.Arrival}
 	for _, level := range []unit.Angle{set.UpperSun, set.LowerSun} {
-		for _, c := range s.crossings(s.above(astro.Sun, fixed(level))) {
+		for _, c := range s.sunCrossings(level) {
 			marks = append(marks, c.time)
 		}
 	}
 	sort.Slice(marks, func(i, j int) bool { return marks[i].Before(marks[j]) })
-	best := s.crossings(s.above(astro.Sun, fixed(bestSun)))
+	best := s.sunCrossings(bestSun)
 	var all []Window
 	for i := 1; i < len(marks); i++ {
 		begin, end := marks[i-1], marks[i]

@@ -1,0 +1,133 @@
+package astro
+
+import (
+	"math"
+	"time"
+
+	"github.com/soniakeys/unit"
+)
+
+// Sky gives the places of bodies at one instant: a [Moment], or what
+// [Ephemeris.At] gives.
+type Sky interface {
+	Place(Body) Place
+}
+
+// Ephemeris holds the places of Sun, Moon and planets at even steps over a
+// span, for the many instants that a search asks for. Between the steps it
+// interpolates through six of them, within 0.001' of [Moment.Place].
+type Ephemeris struct {
+	deltaT func(time.Time) time.Duration
+	days   float64 // ΔT at the middle of the span, in days
+	bodies [Saturn + 1]samples
+}
+
+// samples are a body's at even steps.
+type samples struct {
+	start time.Time
+	step  time.Duration
+	rows  []sample
+}
+
+// sample is what changes slowly: direction on the true equator of date (three
+// numbers), equation of the equinoxes, HP, SD, magnitude, lit part.
+type sample [8]float64
+
+// points is how many rows one interpolation uses.
+const points = 6
+
+// NewEphemeris prepares the span from one instant to another, with ΔT from the
+// function given.
+func NewEphemeris(from, to time.Time, deltaT func(time.Time) time.Duration) *Ephemeris {
+	e := &Ephemeris{deltaT: deltaT, days: deltaT(from.Add(to.Sub(from)/2)).Hours() / 24}
+	slow := newSamples(48*time.Hour, from, to)
+	for _, t := range slow.times(to) {
+		m := NewMoment(t, deltaT(t))
+		for _, b := range []Body{Sun, Venus, Mars, Jupiter, Saturn} {
+			e.bodies[b].rows = append(e.bodies[b].rows, m.sample(m.Place(b)))
+		}
+	}
+	for _, b := range []Body{Sun, Venus, Mars, Jupiter, Saturn} {
+		e.bodies[b].start, e.bodies[b].step = slow.start, slow.step
+	}
+	moon := newSamples(12*time.Hour, from, to)
+	for _, t := range moon.times(to) {
+		f := newFrame(t, deltaT(t))
+		moon.rows = append(moon.rows, f.sample(f.moon().litBy(e.Place(Sun, t))))
+	}
+	e.bodies[Moon] = moon
+	return e
+}
+
+// newSamples starts so far before a span that its beginning lies in the middle
+// of the rows used.
+func newSamples(step time.Duration, from, to time.Time) samples {
+	return samples{start: from.Add(-points / 2 * step), step: step}
+}
+
+// times are the instants of the rows that a span to the instant given needs.
+func (s samples) times(to time.Time) (all []time.Time) {
+	for t := s.start; t.Before(to.Add(points / 2 * s.step)); t = t.Add(s.step) {
+		all = append(all, t)
+	}
+	return all
+}
+
+func (f *frame) sample(p Place) sample {
+	d := spherical(f.gast-p.GHA.Rad(), p.Dec.Rad())
+	return sample{d[0], d[1], d[2], f.equinoxes(), p.HP.Rad(), p.SD.Rad(), p.Magnitude, p.Illuminated}
+}
+
+// Place gives the place of the Sun, the Moon or a planet at an instant of the
+// span.
+func (e *Ephemeris) Place(b Body, t time.Time) Place {
+	s := e.bodies[b].at(t)
+	ra, dec := vector(s[:3]).lonLat()
+	ut := daysSinceJ2000(t)
+	gast := siderealTime(ut, (ut+e.days)/36525) + s[3]
+	return Place{circle(gast - ra), unit.Angle(dec), unit.Angle(s[4]), unit.Angle(s[5]), s[6], s[7]}
+}
+
+// at interpolates.
+func (s *samples) at(t time.Time) (mean sample) {
+	x := float64(t.Sub(s.start)) / float64(s.step)
+	first := min(max(int(math.Floor(x))-points/2+1, 0), len(s.rows)-points)
+	for i, w := range lagrange(x - float64(first)) {
+		for k, v := range s.rows[first+i] {
+			mean[k] += w * v
+		}
+	}
+	return mean
+}
+
+// lagrange gives the weights of six values at 0, 1 ... 5 for the value at x
+// (Meeus ch. 3, with the factorials worked out).
+func lagrange(x float64) (w [points]float64) {
+	scale := [points]float64{-120, 24, -12, 12, -24, 120}
+	for i := range w {
+		p := 1.0
+		for j := range w {
+			if j != i {
+				p *= x - float64(j)
+			}
+		}
+		w[i] = p / scale[i]
+	}
+	return w
+}
+
+// At gives the places of all bodies at an instant of the span, those of the
+// solar system by interpolation.
+func (e *Ephemeris) At(t time.Time) Sky { return instant{e, NewMoment(t, e.deltaT(t))} }
+
+type instant struct {
+	ephemeris *Ephemeris
+	moment    *Moment
+}
+
+func (i instant) Place(b Body) Place {
+	if b < Aries {
+		return i.ephemeris.Place(b, i.moment.time)
+	}
+	return i.moment.Place(b)
+}
