@@ -65,17 +65,20 @@ func (b Body) String() string {
 func Planets() []Body { return []Body{Venus, Mars, Jupiter, Saturn} }
 
 // Stars gives the 57 navigational stars and Polaris in alphabetical order.
-func Stars() []Body {
-	stars := make([]Body, len(catalogue()))
-	for i := range stars {
-		stars[i] = firstStar + Body(i)
+func Stars() []Body { return Bodies()[firstStar:] }
+
+// Bodies gives all bodies: Sun, Moon, planets, Aries, stars.
+func Bodies() []Body {
+	all := make([]Body, int(firstStar)+len(catalogue()))
+	for i := range all {
+		all[i] = Body(i)
 	}
-	return stars
+	return all
 }
 
 // ParseBody finds a body by its name; capitals do not matter.
 func ParseBody(name string) (Body, error) {
-	for b := Sun; int(b) < int(firstStar)+len(catalogue()); b++ {
+	for _, b := range Bodies() {
 		if strings.EqualFold(name, b.String()) {
 			return b, nil
 		}

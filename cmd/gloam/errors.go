@@ -63,7 +63,7 @@ func hintOf(err error) string {
 	case errors.As(err, &t):
 		return t.Hint
 	case errors.As(err, &u):
-		return "gloam --help, or gloam plan --help, shows what may be given"
+		return "--help shows what may be given"
 	}
 	return ""
 }

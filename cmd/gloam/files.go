@@ -53,11 +53,21 @@ func writeAll(outputs []output, stdout io.Writer) (err error) {
 	return nil
 }
 
-func cannotWrite(path string, err error) error {
+func cannotRead(path string, err error, hint string) error {
+	return hinted{&fileError{path, bare(err)}, hint}
+}
+
+// bare is an error of a file without the operation and the path.
+func bare(err error) error {
 	var p *fs.PathError
 	if errors.As(err, &p) {
-		err = p.Err
+		return p.Err
 	}
+	return err
+}
+
+func cannotWrite(path string, err error) error {
+	err = bare(err)
 	return hinted{&fileError{path, fmt.Errorf("cannot be written: %w", err)}, "check the folder and its permissions, or name another file"}
 }
 

@@ -26,6 +26,7 @@ type planFlags struct {
 	lowest, highest, sunUpper, sunLower float64
 	sightError, commonError             float64
 	alarm                               time.Duration
+	deltaT                              deltaTFlag
 	ics, json                           string
 	changed                             func(string) bool
 }
@@ -72,6 +73,7 @@ func (f *planFlags) define(cmd *cobra.Command) {
 	flags.DurationVar(&f.alarm, "alarm", 20*time.Minute, "calendar alarm before each window; 0 for none")
 	flags.StringVar(&f.ics, "ics", "", "write the calendar to this file (- for standard output, alone)")
 	flags.StringVar(&f.json, "json", "", "write the plan as JSON to this file (- for standard output, alone)")
+	f.deltaT.define(cmd)
 	_ = cmd.RegisterFlagCompletionFunc("sailing", cobra.FixedCompletions([]string{"rhumb", "great-circle"}, cobra.ShellCompDirectiveNoFileComp))
 }
 

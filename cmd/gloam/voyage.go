@@ -18,11 +18,7 @@ func readRoute(file string, stdin io.Reader) (*track.Route, error) {
 	if file != "-" {
 		f, err := os.Open(file)
 		if err != nil {
-			var p *os.PathError
-			if errors.As(err, &p) {
-				err = p.Err
-			}
-			return nil, hinted{&fileError{file, err}, "name a GeoJSON file with the route to sail"}
+			return nil, cannotRead(file, err, "name a GeoJSON file with the route to sail")
 		}
 		defer f.Close()
 		in = f
@@ -103,9 +99,9 @@ func (f *planFlags) blame(file string, err error) error {
 	return &fileError{file, err}
 }
 
-// parseInstant reads RFC 3339, the seconds of which may be left out.
+// parseInstant reads RFC 3339, of which seconds and minutes may be left out.
 func parseInstant(text string) (time.Time, error) {
-	for _, layout := range []string{time.RFC3339, "2006-01-02T15:04Z07:00"} {
+	for _, layout := range []string{time.RFC3339, "2006-01-02T15:04Z07:00", "2006-01-02T15Z07:00"} {
 		if t, err := time.Parse(layout, text); err == nil {
 			return t, nil
 		}
@@ -115,7 +111,7 @@ func parseInstant(text string) (time.Time, error) {
 
 func (f *planFlags) settings(r *track.Route) plan.Settings {
 	set := plan.DefaultSettings()
-	set.EyeM = f.eye
+	set.EyeM, set.DeltaT = f.eye, f.deltaT.at
 	if r.EyeM > 0 && !f.changed("eye") {
 		set.EyeM = r.EyeM
 	}
