@@ -2,6 +2,7 @@ package astro
 
 import (
 	"math"
+	"sync"
 	"time"
 
 	"github.com/soniakeys/unit"
@@ -40,23 +41,45 @@ const points = 6
 // function given.
 func NewEphemeris(from, to time.Time, deltaT func(time.Time) time.Duration) *Ephemeris {
 	e := &Ephemeris{deltaT: deltaT, days: deltaT(from.Add(to.Sub(from)/2)).Hours() / 24}
+	var moon sync.WaitGroup
+	moon.Go(func() { e.bodies[Moon] = moonSamples(from, to, deltaT) })
 	slow := newSamples(48*time.Hour, from, to)
-	for _, t := range slow.times(to) {
-		m := NewMoment(t, deltaT(t))
-		for _, b := range []Body{Sun, Venus, Mars, Jupiter, Saturn} {
-			e.bodies[b].rows = append(e.bodies[b].rows, m.sample(m.Place(b)))
+	for b := range e.bodies {
+		if Body(b) != Moon {
+			e.bodies[b] = slow
 		}
 	}
-	for _, b := range []Body{Sun, Venus, Mars, Jupiter, Saturn} {
-		e.bodies[b].start, e.bodies[b].step = slow.start, slow.step
+	for _, t := range slow.times(to) {
+		m := NewMoment(t, deltaT(t))
+		for b := range e.bodies {
+			if Body(b) != Moon {
+				e.bodies[b].rows = append(e.bodies[b].rows, m.sample(m.Place(Body(b))))
+			}
+		}
 	}
-	moon := newSamples(12*time.Hour, from, to)
-	for _, t := range moon.times(to) {
-		f := newFrame(t, deltaT(t))
-		moon.rows = append(moon.rows, f.sample(f.moon().litBy(e.Place(Sun, t))))
-	}
-	e.bodies[Moon] = moon
+	moon.Wait()
+	e.lightMoon()
 	return e
+}
+
+// moonSamples are the Moon's, but for how it looks.
+func moonSamples(from, to time.Time, deltaT func(time.Time) time.Duration) samples {
+	s := newSamples(12*time.Hour, from, to)
+	for _, t := range s.times(to) {
+		f := newFrame(t, deltaT(t))
+		s.rows = append(s.rows, f.sample(f.moon()))
+	}
+	return s
+}
+
+// lightMoon fills in how the Moon looks, which takes the Sun's place.
+func (e *Ephemeris) lightMoon() {
+	for i := range e.bodies[Moon].rows {
+		t := e.bodies[Moon].start.Add(time.Duration(i) * e.bodies[Moon].step)
+		row := &e.bodies[Moon].rows[i]
+		p := e.place(*row, t).litBy(e.Place(Sun, t))
+		row[6], row[7] = p.Magnitude, p.Illuminated
+	}
 }
 
 // newSamples starts so far before a span that its beginning lies in the middle
@@ -80,8 +103,10 @@ func (f *frame) sample(p Place) sample {
 
 // Place gives the place of the Sun, the Moon or a planet at an instant of the
 // span.
-func (e *Ephemeris) Place(b Body, t time.Time) Place {
-	s := e.bodies[b].at(t)
+func (e *Ephemeris) Place(b Body, t time.Time) Place { return e.place(e.bodies[b].at(t), t) }
+
+// place turns a sample to the hour angle of an instant.
+func (e *Ephemeris) place(s sample, t time.Time) Place {
 	ra, dec := vector(s[:3]).lonLat()
 	ut := daysSinceJ2000(t)
 	gast := siderealTime(ut, (ut+e.days)/36525) + s[3]

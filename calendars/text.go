@@ -88,11 +88,12 @@ func (t *text) bodies(w *plan.Window) {
 	}
 }
 
+var lineEnds = strings.NewReplacer("\r\n", "\n", "\r", "\n", "\u0085", "\n", "\u2028", "\n", "\u2029", "\n")
+
 // clean makes a text fit for a calendar: valid UTF-8, line ends as LF, no
 // other control characters but the tabulator, no blanks at the ends.
 func clean(s string) string {
-	s = strings.ToValidUTF8(s, "\uFFFD")
-	s = strings.NewReplacer("\r\n", "\n", "\r", "\n", "\u0085", "\n", "\u2028", "\n", "\u2029", "\n").Replace(s)
+	s = lineEnds.Replace(strings.ToValidUTF8(s, "\uFFFD"))
 	s = strings.Map(func(r rune) rune {
 		if unicode.IsControl(r) && r != '\n' && r != '\t' {
 			return -1

@@ -1,6 +1,7 @@
 package plan
 
 import (
+	"io"
 	"testing"
 	"time"
 
@@ -46,3 +47,23 @@ func benchmarkPlan(b *testing.B, days int) {
 
 func BenchmarkPlan15Days(b *testing.B)  { benchmarkPlan(b, 15) }
 func BenchmarkPlan150Days(b *testing.B) { benchmarkPlan(b, 150) }
+
+func BenchmarkWriteText(b *testing.B) {
+	p := planOf(b, longPassage(b, 15), DefaultSettings())
+	b.ReportAllocs()
+	for b.Loop() {
+		if err := p.WriteText(io.Discard, false); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
+
+func BenchmarkWriteJSON(b *testing.B) {
+	p := planOf(b, longPassage(b, 15), DefaultSettings())
+	b.ReportAllocs()
+	for b.Loop() {
+		if err := p.WriteJSON(io.Discard); err != nil {
+			b.Fatal(err)
+		}
+	}
+}

@@ -1,8 +1,11 @@
 package plan
 
 import (
+	"runtime"
 	"sort"
 	"time"
+
+	"golang.org/x/sync/errgroup"
 
 	"gloam/track"
 )
@@ -25,12 +28,19 @@ func New(p *track.Passage, set Settings) (*Plan, error) {
 	clock := track.NewClock(p)
 	windows := s.windows(set)
 	nameWindows(windows, clock)
+	var group errgroup.Group
+	group.SetLimit(runtime.GOMAXPROCS(0))
 	for i := range windows {
-		w := &windows[i]
-		w.Bodies = set.candidates(s.ephemeris.At(w.Best), w.Fix.Position)
-		w.Triads = triads(w.Bodies, set.CommonError)
+		group.Go(func() error {
+			w := &windows[i]
+			w.Bodies = set.candidates(s.ephemeris.At(w.Best), w.Fix.Position)
+			w.Triads = triads(w.Bodies, set.CommonError)
+			return nil
+		})
 	}
-	return &Plan{Passage: p, Clock: clock, Settings: set, Days: s.days(clock, set, s.events(), windows)}, nil
+	events := s.events()
+	_ = group.Wait() // none fails
+	return &Plan{Passage: p, Clock: clock, Settings: set, Days: s.days(clock, set, events, windows)}, nil
 }
 
 // Windows gives the windows of all days in order.

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"bytes"
 	"errors"
 	"fmt"
 	"io"
@@ -12,7 +13,7 @@ import (
 // output is a file to be written; the path "-" is standard output.
 type output struct {
 	path string
-	data []byte
+	data *bytes.Buffer
 }
 
 // staged is an output that stands complete under a temporary name.
@@ -96,7 +97,7 @@ func stage(o output) (staged, error) {
 	if err != nil {
 		return staged{}, err
 	}
-	_, err = f.Write(o.data)
+	_, err = f.Write(o.data.Bytes())
 	if err = errors.Join(err, f.Sync(), f.Close()); err != nil {
 		os.Remove(temporary)
 		return staged{}, err
@@ -106,8 +107,8 @@ func stage(o output) (staged, error) {
 
 func writeDirect(o output, stdout io.Writer) error {
 	if o.path == "-" {
-		_, err := stdout.Write(o.data)
+		_, err := stdout.Write(o.data.Bytes())
 		return err
 	}
-	return os.WriteFile(o.path, o.data, 0)
+	return os.WriteFile(o.path, o.data.Bytes(), 0)
 }

@@ -11,6 +11,7 @@ import (
 	"time"
 
 	"github.com/spf13/cobra"
+	"golang.org/x/sync/errgroup"
 	"golang.org/x/term"
 
 	"gloam/calendars"
@@ -136,33 +137,26 @@ func stampTime(w world) (time.Time, error) {
 	return time.Unix(seconds, 0).UTC(), nil
 }
 
-// outputs prints the plan in all the forms asked for; the text comes last and
-// is left out where standard output is taken.
+// outputs prints the plan in all the forms asked for, at the same time; the
+// text comes last and is left out where standard output is taken.
 func (f *planFlags) outputs(p *plan.Plan, stamp time.Time, w world) ([]output, error) {
 	opt := calendars.Options{Alarm: f.alarm, Stamp: stamp}
-	forms := []struct {
-		path  string
-		write func(io.Writer) error
-	}{
-		{f.ics, func(b io.Writer) error { return calendars.Write(b, p, opt) }},
-		{f.json, p.WriteJSON},
-		{"-", func(b io.Writer) error { return p.WriteText(b, bold(w)) }},
-	}
-	if f.ics == "-" || f.json == "-" {
-		forms = forms[:2]
-	}
 	var all []output
-	for _, form := range forms {
-		if form.path == "" {
-			continue
+	var group errgroup.Group
+	add := func(path string, write func(io.Writer) error) {
+		if path == "" {
+			return
 		}
-		var b bytes.Buffer
-		if err := form.write(&b); err != nil {
-			return nil, err
-		}
-		all = append(all, output{form.path, b.Bytes()})
+		b := &bytes.Buffer{}
+		all = append(all, output{path, b})
+		group.Go(func() error { return write(b) })
 	}
-	return all, nil
+	add(f.ics, func(b io.Writer) error { return calendars.Write(b, p, opt) })
+	add(f.json, p.WriteJSON)
+	if f.ics != "-" && f.json != "-" {
+		add("-", func(b io.Writer) error { return p.WriteText(b, bold(w)) })
+	}
+	return all, group.Wait()
 }
 
 // bold tells whether standard output is a terminal that wants bold headings.
