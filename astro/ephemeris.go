@@ -14,13 +14,12 @@ type Sky interface {
 	Place(Body) Place
 }
 
-// Ephemeris holds the places of Sun, Moon and planets at even steps over a
-// span, for the many instants that a search asks for. Between the steps it
-// interpolates through six of them, within 0.001' of [Moment.Place].
+// Ephemeris holds the places of all bodies at even steps over a span, for the
+// many instants that a search asks for. Between the steps it interpolates
+// through six of them, within 0.001' of [Moment.Place].
 type Ephemeris struct {
-	deltaT func(time.Time) time.Duration
-	days   float64 // ΔT at the middle of the span, in days
-	bodies [Saturn + 1]samples
+	days   float64   // ΔT at the middle of the span, in days
+	bodies []samples // by Body
 }
 
 // samples are a body's at even steps.
@@ -40,20 +39,22 @@ const points = 6
 // NewEphemeris prepares the span from one instant to another, with ΔT from the
 // function given.
 func NewEphemeris(from, to time.Time, deltaT func(time.Time) time.Duration) *Ephemeris {
-	e := &Ephemeris{deltaT: deltaT, days: deltaT(from.Add(to.Sub(from)/2)).Hours() / 24}
+	e := &Ephemeris{days: deltaT(from.Add(to.Sub(from)/2)).Hours() / 24, bodies: make([]samples, len(Bodies()))}
 	var moon sync.WaitGroup
 	moon.Go(func() { e.bodies[Moon] = moonSamples(from, to, deltaT) })
 	slow := newSamples(48*time.Hour, from, to)
-	for b := range e.bodies {
-		if Body(b) != Moon {
+	times := slow.times(to)
+	for _, b := range Bodies() {
+		if b != Moon {
 			e.bodies[b] = slow
+			e.bodies[b].rows = make([]sample, len(times))
 		}
 	}
-	for _, t := range slow.times(to) {
+	for i, t := range times {
 		m := NewMoment(t, deltaT(t))
-		for b := range e.bodies {
-			if Body(b) != Moon {
-				e.bodies[b].rows = append(e.bodies[b].rows, m.sample(m.Place(Body(b))))
+		for _, b := range Bodies() {
+			if b != Moon {
+				e.bodies[b].rows[i] = m.sample(m.Place(b))
 			}
 		}
 	}
@@ -101,8 +102,7 @@ func (f *frame) sample(p Place) sample {
 	return sample{d[0], d[1], d[2], f.equinoxes(), p.HP.Rad(), p.SD.Rad(), p.Magnitude, p.Illuminated}
 }
 
-// Place gives the place of the Sun, the Moon or a planet at an instant of the
-// span.
+// Place gives the place of a body at an instant of the span.
 func (e *Ephemeris) Place(b Body, t time.Time) Place { return e.place(e.bodies[b].at(t), t) }
 
 // place turns a sample to the hour angle of an instant.
@@ -141,18 +141,12 @@ func lagrange(x float64) (w [points]float64) {
 	return w
 }
 
-// At gives the places of all bodies at an instant of the span, those of the
-// solar system by interpolation.
-func (e *Ephemeris) At(t time.Time) Sky { return instant{e, NewMoment(t, e.deltaT(t))} }
+// At gives the places of all bodies at an instant of the span.
+func (e *Ephemeris) At(t time.Time) Sky { return instant{e, t} }
 
 type instant struct {
 	ephemeris *Ephemeris
-	moment    *Moment
+	time      time.Time
 }
 
-func (i instant) Place(b Body) Place {
-	if b < Aries {
-		return i.ephemeris.Place(b, i.moment.time)
-	}
-	return i.moment.Place(b)
-}
+func (i instant) Place(b Body) Place { return i.ephemeris.Place(b, i.time) }

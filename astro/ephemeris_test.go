@@ -14,10 +14,10 @@ func TestEphemerisFollowsMoment(t *testing.T) {
 	from := time.Date(2026, 11, 20, 12, 0, 0, 0, time.UTC)
 	to := from.AddDate(0, 0, 200)
 	e := NewEphemeris(from, to, DeltaT)
-	var arc, look [Saturn + 1]spread
+	arc, look := make([]spread, len(Bodies())), make([]spread, len(Bodies()))
 	compare := func(at time.Time) {
 		m := NewMoment(at, DeltaT(at))
-		for b := Sun; b <= Saturn; b++ {
+		for _, b := range Bodies() {
 			got, want := e.Place(b, at), m.Place(b)
 			arc[b].add(off(got.GHA, want.GHA) * want.Dec.Cos())
 			arc[b].add(off(got.Dec, want.Dec))
@@ -31,27 +31,25 @@ func TestEphemerisFollowsMoment(t *testing.T) {
 	}
 	compare(from)
 	compare(to)
-	for range 2000 {
+	for range 500 {
 		compare(from.Add(time.Duration(rng.Int64N(int64(to.Sub(from))))))
 	}
-	for b := Sun; b <= Saturn; b++ {
+	for _, b := range Bodies() {
 		if !(arc[b].worst < 0.001 && look[b].worst < 0.001) || math.IsNaN(arc[b].sum+look[b].sum) {
 			t.Errorf("%v: worst %.5f' and %.5f, want under 0.001 of each", b, arc[b].worst, look[b].worst)
 		}
-		t.Logf("%-8v worst %.6f', look %.6f", b, arc[b].worst, look[b].worst)
+		if b < firstStar {
+			t.Logf("%-8v worst %.6f', look %.6f", b, arc[b].worst, look[b].worst)
+		}
 	}
 }
 
-// At gives the same places, and those of the stars besides.
+// At gives the same places.
 func TestEphemerisAt(t *testing.T) {
 	at := time.Date(2026, 11, 25, 7, 0, 0, 0, time.UTC)
 	e := NewEphemeris(at.Add(-time.Hour), at.Add(time.Hour), DeltaT)
-	sky, m := e.At(at), NewMoment(at, DeltaT(at))
-	if got, want := sky.Place(Moon), e.Place(Moon, at); got != want {
-		t.Errorf("Moon %v, want %v", got, want)
-	}
-	for _, b := range append(Stars(), Aries) {
-		if got, want := sky.Place(b), m.Place(b); got != want {
+	for _, b := range Bodies() {
+		if got, want := e.At(at).Place(b), e.Place(b, at); got != want {
 			t.Errorf("%v %v, want %v", b, got, want)
 		}
 	}
