@@ -77,3 +77,8 @@ func circle(a float64) unit.Angle {
 	}
 	return 0
 }
+
+// angle is that between two unit vectors, [0, π].
+func (v vector) angle(w vector) float64 {
+	return 2 * math.Asin(math.Min(v.sub(w).norm()/2, 1))
+}
