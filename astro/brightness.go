@@ -84,26 +84,26 @@ func (l Light) distance(h, zn unit.Angle) float64 {
 // (Krisciunas & Schaefer, PASP 103, 1033, 1991).
 func scatter(distance float64) float64 {
 	c := cos(distance * degree)
-	return 6.2e7/(distance*distance) + math.Pow(10, 6.15-distance/40) + math.Pow(10, 5.36)*(1.06+c*c)
+	return 6.2e7/(distance*distance) + tenTo(6.15-distance/40) + 229086.77*(1.06+c*c) // 10^5.36
 }
 
 // Brightness is that of the sky in a direction, in nanolamberts: night sky,
 // twilight or daylight, whichever is less, and moonlight.
 func (a Air) Brightness(sun, moon Light, h, zn unit.Angle) float64 {
 	k, x := a.sum, airMass(h)
-	dimmed := 1 - math.Pow(10, -0.4*k*x)
+	dimmed := 1 - dim(k*x)
 	sine := 1 - h.Sin()*h.Sin() // sin² of the zenith distance
-	night := a.night * (0.4 + 0.6/math.Sqrt(1-0.96*sine)) * math.Pow(10, -0.4*k*x)
+	night := a.night * (0.4 + 0.6/math.Sqrt(1-0.96*sine)) * dim(k*x)
 
 	rs, zenith := sun.distance(h, zn), 90-h.Deg()
-	twilight := math.Pow(10, -0.4*(visualSun-visualZero+32.5-sun.Altitude.Deg()-zenith/(360*k))) * (100 / rs) * dimmed
+	twilight := dim(visualSun-visualZero+32.5-sun.Altitude.Deg()-zenith/(360*k)) * (100 / rs) * dimmed
 	return (night + math.Min(twilight, scattered(visualSun, k, rs, airMass(sun.Altitude), dimmed)) + a.moonlight(moon, k, dimmed, h, zn)) / nanolambert
 }
 
 // scattered is the light that the air scatters from a body of a magnitude.
 func scattered(magnitude, k, distance, mass, dimmed float64) float64 {
-	through := math.Pow(10, -0.4*k*mass)
-	return math.Pow(10, -0.4*(magnitude-visualZero+dayMagnitude)) * dimmed * (scatter(distance)*through + fullScatter*(1-through))
+	through := dim(k * mass)
+	return dim(magnitude-visualZero+dayMagnitude) * dimmed * (scatter(distance)*through + fullScatter*(1-through))
 }
 
 func (a Air) moonlight(moon Light, k, dimmed float64, h, zn unit.Angle) float64 {
@@ -118,10 +118,16 @@ func (a Air) moonlight(moon Light, k, dimmed float64, h, zn unit.Angle) float64 
 // LimitingMagnitude is that of the faintest body the naked eye finds at an
 // altitude against a sky of a brightness in nanolamberts (Schaefer, as above).
 func (a Air) LimitingMagnitude(brightness float64, h unit.Angle) float64 {
-	c1, c2 := math.Pow(10, -9.8), math.Pow(10, -1.9)
+	c1, c2 := -9.8, -1.9 // logarithms
 	if brightness > 1500 {
-		c1, c2 = math.Pow(10, -8.350001), math.Pow(10, -5.9)
+		c1, c2 = -8.350001, -5.9
 	}
-	threshold := c1 * math.Pow(1+math.Sqrt(c2*brightness), 2)
-	return -16.57 - 2.5*math.Log10(threshold) - a.Extinction(h)
+	threshold := c1 + 2*math.Log10(1+math.Sqrt(tenTo(c2)*brightness))
+	return -16.57 - 2.5*threshold - a.Extinction(h)
 }
+
+// tenTo is 10 to a power.
+func tenTo(x float64) float64 { return math.Exp(math.Ln10 * x) }
+
+// dim is the factor by which magnitudes weaken light.
+func dim(magnitudes float64) float64 { return tenTo(-0.4 * magnitudes) }

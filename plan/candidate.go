@@ -3,6 +3,7 @@ package plan
 import (
 	"math"
 	"sort"
+	"time"
 
 	"github.com/soniakeys/unit"
 
@@ -19,6 +20,7 @@ type Candidate struct {
 	Limb              astro.Limb // the one to bring to the horizon
 	Preset            unit.Angle // Hs to set on the sextant
 	Error             unit.Angle // standard error of the sight
+	From, To          time.Time  // the span of the window in which it can be shot
 }
 
 // shootable are the bodies considered in a star window.

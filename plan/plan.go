@@ -33,8 +33,9 @@ func New(p *track.Passage, set Settings) (*Plan, error) {
 	for i := range windows {
 		group.Go(func() error {
 			w := &windows[i]
-			w.Bodies = set.candidates(s.ephemeris.At(w.Best), w.Fix.Position)
+			w.Bodies = s.visible(w, &set, set.candidates(s.ephemeris.At(w.Best), w.Fix.Position))
 			w.Triads = triads(w.Bodies, set.CommonError)
+			s.takeRound(w, &set)
 			return nil
 		})
 	}

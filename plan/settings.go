@@ -21,6 +21,20 @@ type Settings struct {
 	LowestAltitude, HighestAltitude unit.Angle // limits of Hc for a candidate, 0° to 90°
 	UpperSun, LowerSun              unit.Angle // the Sun's altitudes that bound a window, -18° to 0°
 
+	// What can be seen.
+	Humidity                  float64    // relative, 0.01 to 0.99
+	TelescopeGain             float64    // magnitudes a telescope adds to the eye's reach, 0 to 6
+	HorizonAway, HorizonUnder unit.Angle // Sun's altitude down to which the horizon serves, opposite the Sun and under it
+	Clouds                    []Arc      // true bearings without sky
+	Blind                     []Arc      // bearings from the bow without horizon
+	Without                   []astro.Body
+
+	// The round.
+	Sights  int           // at most so many, 1 to 8
+	Pace    time.Duration // from one sight to the next at least, 10 s to 1 h
+	Loss    float64       // chance that a sight is lost, 0 to under 1
+	DRError float64       // standard error of the DR position, north and east, NM, above 0
+
 	DeltaT func(time.Time) time.Duration // TT - UT1
 }
 
@@ -30,7 +44,8 @@ var bestSun = unit.AngleFromDeg(-8.5)
 
 // DefaultSettings are for a small boat: eye 2 m, sextant without error,
 // standard air, half a minute of error each to a sight and to a round,
-// candidates from 12° to 72°, windows between civil and nautical twilight.
+// candidates from 12° to 72°, windows between civil and nautical twilight, six
+// sights three minutes apart, of which every fourth may be lost.
 func DefaultSettings() Settings {
 	return Settings{
 		Sextant:         astro.Sextant{EyeM: 2, TemperatureC: 10, PressureHPa: 1010},
@@ -40,6 +55,14 @@ func DefaultSettings() Settings {
 		HighestAltitude: unit.AngleFromDeg(72),
 		UpperSun:        civilTwilight,
 		LowerSun:        nauticalTwilight,
+		Humidity:        0.7,
+		TelescopeGain:   2,
+		HorizonAway:     unit.AngleFromDeg(-10),
+		HorizonUnder:    unit.AngleFromDeg(-11.5),
+		Sights:          6,
+		Pace:            3 * time.Minute,
+		Loss:            0.25,
+		DRError:         5,
 		DeltaT:          astro.DeltaT,
 	}
 }
@@ -60,10 +83,21 @@ func (s Settings) Validate() error {
 		{"highest altitude (°)", s.HighestAltitude.Deg(), s.LowestAltitude.Deg(), 90},
 		{"Sun's lower limit (°)", s.LowerSun.Deg(), -18, 0},
 		{"Sun's upper limit (°)", s.UpperSun.Deg(), s.LowerSun.Deg(), 0},
+		{"humidity", s.Humidity, 0.01, 0.99},
+		{"telescope's gain (magnitudes)", s.TelescopeGain, 0, 6},
+		{"Sun's altitude for the horizon opposite it (°)", s.HorizonAway.Deg(), -18, 0},
+		{"Sun's altitude for the horizon under it (°)", s.HorizonUnder.Deg(), -18, 0},
+		{"sights", float64(s.Sights), 1, 8},
+		{"pace (s)", s.Pace.Seconds(), 10, 3600},
+		{"chance of losing a sight", s.Loss, 0, 0.99},
+		{"error of the DR position (NM)", s.DRError, 0.1, 100},
 	} {
 		if math.IsNaN(c.value) || c.value < c.min-1e-9 || c.value > c.max+1e-9 {
 			return fmt.Errorf("%s: %.4g (%.4g to %.4g)", c.name, c.value, c.min, c.max)
 		}
+	}
+	if covered(s.Clouds) || covered(s.Blind) {
+		return fmt.Errorf("arcs: they cover the whole horizon (leave some of it free)")
 	}
 	if s.UpperSun-s.LowerSun < unit.AngleFromDeg(0.01) || s.HighestAltitude-s.LowestAltitude < unit.AngleFromDeg(0.01) {
 		return fmt.Errorf("limits: lower and upper are the same (the lower must be below the upper)")

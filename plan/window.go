@@ -26,10 +26,14 @@ const (
 type Window struct {
 	ID               string // ship's date at Begin, and kind; the same when the passage is planned again
 	Kind             WindowKind
-	Begin, End, Best time.Time   // UTC
-	Fix              track.Fix   // the ship at Best
-	Bodies           []Candidate // at Best, by azimuth
-	Triads           []Triad     // the best first
+	Begin, End, Best time.Time    // UTC
+	Fix              track.Fix    // the ship at Best
+	Bodies           []Candidate  // at Best, by azimuth
+	Triads           []Triad      // the best first
+	Usable           [2]time.Time // UTC: from the third body that can be shot until fewer than three can; zero where never
+	Round            []RoundSight // in order
+	RoundFix         FixQuality
+	PairFix          FixQuality // of the two best bodies; no Bodies where there are none
 }
 
 // windows finds every maximal span in which the Sun stands between the limits,
