@@ -42,6 +42,13 @@ func description(p *plan.Plan, d *plan.Day, w *plan.Window) string {
 	t.line("Begin %s", t.times(w.Begin))
 	t.line("Best  %s", t.times(w.Best))
 	t.line("End   %s", t.times(w.End))
+	if !w.Usable[0].IsZero() {
+		t.line("Use   %s", t.times(w.Usable[0]))
+		t.line("until %s", t.times(w.Usable[1]))
+	}
+	for _, warning := range w.Warnings {
+		t.line("Mind: %s", warning)
+	}
 	t.line("DR %v", w.Fix.Position)
 	t.line("Course %s, %.1f kn", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
 	t.line("")
@@ -80,7 +87,15 @@ func (t *text) bodies(w *plan.Window) {
 		t.line("95 %% ellipse %.1f x %.1f NM along %s", ellipse.SemiMajorNM, ellipse.SemiMinorNM, dm.Bearing(ellipse.Axis))
 	}
 	t.line("")
-	t.line("Set Hs, look along Zn (Hc, magnitude):")
+	if len(w.Round) > 0 {
+		t.line("Round, ship's time: set Hs, Zn, bow")
+	}
+	for _, r := range w.Round {
+		label := plan.Candidate{Body: r.Body, Limb: r.Limb}.Label()
+		t.line("%s %s %s Zn %s bow %s", t.plan.Clock.At(r.Time).Format("15:04"), label, dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative))
+	}
+	t.line("")
+	t.line("At best: set Hs, Zn (Hc, magnitude)")
 	for _, c := range w.Bodies {
 		if w.Listed(c.Body) {
 			t.line("%s %s Zn %s (%s, %.1f)", c.Label(), dm.Altitude(c.Preset), dm.Bearing(c.Azimuth), dm.Altitude(c.Altitude), c.Magnitude)

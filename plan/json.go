@@ -124,20 +124,46 @@ type jsonEvent struct {
 }
 
 type jsonWindow struct {
-	ID      string      `json:"id"`
-	Kind    WindowKind  `json:"kind"`
-	Begin   utc         `json:"begin"`
-	End     utc         `json:"end"`
-	Best    utc         `json:"best"`
-	Lat     deg         `json:"lat"`
-	Lon     east        `json:"lon"`
-	Course  turn        `json:"course_deg"`
-	Speed   brief       `json:"speed_kn"`
-	Offset  offset      `json:"ship_time_offset"`
-	Bodies  []jsonBody  `json:"bodies"`
-	Triads  []jsonTriad `json:"triads"`
-	Round   []struct{}  `json:"round"`
-	Comment string      `json:"comment"`
+	ID          string       `json:"id"`
+	Kind        WindowKind   `json:"kind"`
+	Begin       utc          `json:"begin"`
+	End         utc          `json:"end"`
+	Best        utc          `json:"best"`
+	Lat         deg          `json:"lat"`
+	Lon         east         `json:"lon"`
+	Course      turn         `json:"course_deg"`
+	Speed       brief        `json:"speed_kn"`
+	Offset      offset       `json:"ship_time_offset"`
+	Bodies      []jsonBody   `json:"bodies"`
+	Triads      []jsonTriad  `json:"triads"`
+	Round       []jsonSight  `json:"round"`
+	UsableBegin *utc         `json:"usable_begin"` // null where never
+	UsableEnd   *utc         `json:"usable_end"`
+	RoundFix    *jsonQuality `json:"round_fix"` // null where there is no round
+	PairFix     *jsonQuality `json:"pair_fix"`
+	Comment     string       `json:"comment"`
+	Warnings    []string     `json:"warnings"`
+}
+
+type jsonSight struct {
+	Body     string `json:"body"`
+	Time     utc    `json:"time"`
+	Altitude deg    `json:"altitude_deg"`
+	Azimuth  turn   `json:"azimuth_deg"`
+	Relative turn   `json:"relative_deg"`
+	Preset   deg    `json:"preset_deg"`
+	Limb     string `json:"limb"`
+	Rate     arcmin `json:"rate_arcmin_per_min"`
+	Late     deg    `json:"preset_5_min_late_deg"`
+}
+
+type jsonQuality struct {
+	Bodies      []string    `json:"bodies"`
+	LeastGap    deg         `json:"least_gap_deg"`
+	GreatestGap deg         `json:"greatest_gap_deg"`
+	Error       miles       `json:"expected_error_nm"`
+	Ellipse     jsonEllipse `json:"ellipse"`
+	Ratio       brief       `json:"ratio_to_floor"`
 }
 
 type jsonBody struct {
@@ -150,6 +176,8 @@ type jsonBody struct {
 	Dec       deg         `json:"dec_deg"`
 	Preset    deg         `json:"preset_deg"`
 	Limb      string      `json:"limb"`
+	From      utc         `json:"from"`
+	To        utc         `json:"to"`
 }
 
 type jsonTriad struct {
@@ -158,6 +186,7 @@ type jsonTriad struct {
 	GreatestGap deg         `json:"greatest_gap_deg"`
 	Error       miles       `json:"expected_error_nm"`
 	Ellipse     jsonEllipse `json:"ellipse"`
+	Ratio       brief       `json:"ratio_to_floor"`
 }
 
 type jsonEllipse struct {
@@ -240,29 +269,58 @@ func (p *Plan) windowJSON(w Window) jsonWindow {
 		ID: w.ID, Kind: w.Kind, Begin: utc(w.Begin), End: utc(w.End), Best: utc(w.Best),
 		Lat: deg(w.Fix.Lat), Lon: east(w.Fix.Lon), Course: turn(w.Fix.Course), Speed: brief(w.Fix.SpeedKn),
 		Offset: offset(time.Duration(seconds) * time.Second),
-		Bodies: each(w.Bodies, bodyJSON), Triads: each(w.Triads, triadJSON), Round: []struct{}{},
-		Comment: w.Comment(),
+		Bodies: each(w.Bodies, bodyJSON), Triads: each(w.Triads, triadJSON), Round: each(w.Round, sightJSON),
+		UsableBegin: maybe(w.Usable[0]), UsableEnd: maybe(w.Usable[1]),
+		RoundFix: qualityJSON(w.RoundFix), PairFix: qualityJSON(w.PairFix),
+		Comment: w.Comment(), Warnings: append([]string{}, w.Warnings...),
 	}
+}
+
+// maybe is null for the zero time.
+func maybe(t time.Time) *utc {
+	if t.IsZero() {
+		return nil
+	}
+	u := utc(t)
+	return &u
+}
+
+func sightJSON(r RoundSight) jsonSight {
+	return jsonSight{
+		Body: r.Body.String(), Time: utc(r.Time), Altitude: deg(r.Altitude), Azimuth: turn(r.Azimuth), Relative: turn(r.Relative),
+		Preset: deg(r.Preset), Limb: r.Limb.String(), Rate: arcmin(r.Rate), Late: deg(r.Late),
+	}
+}
+
+// qualityJSON is null where the sights give no fix.
+func qualityJSON(q FixQuality) *jsonQuality {
+	if len(q.Bodies) == 0 || math.IsInf(q.Covariance.ExpectedError(), 1) {
+		return nil
+	}
+	return &jsonQuality{
+		Bodies: each(q.Bodies, astro.Body.String), LeastGap: deg(q.LeastGap), GreatestGap: deg(q.GreatestGap),
+		Error: miles(q.Covariance.ExpectedError()), Ellipse: ellipseJSON(q.Covariance), Ratio: brief(q.Ratio),
+	}
+}
+
+func ellipseJSON(c Covariance) jsonEllipse {
+	e := c.Ellipse()
+	return jsonEllipse{miles(e.SemiMajorNM), miles(e.SemiMinorNM), turn(e.Axis)}
 }
 
 func bodyJSON(c Candidate) jsonBody {
 	return jsonBody{
 		Body: c.Body.String(), Class: c.Body.Class(), Magnitude: brief(c.Magnitude),
 		Altitude: deg(c.Altitude), Azimuth: turn(c.Azimuth), GHA: turn(c.GHA), Dec: deg(c.Dec),
-		Preset: deg(c.Preset), Limb: c.Limb.String(),
+		Preset: deg(c.Preset), Limb: c.Limb.String(), From: utc(c.From), To: utc(c.To),
 	}
 }
 
 func triadJSON(t Triad) jsonTriad {
-	e := t.Covariance.Ellipse()
-	names := [3]string{}
-	for i, b := range t.Bodies {
-		names[i] = b.String()
-	}
+	q := t.FixQuality
 	return jsonTriad{
-		Bodies: names, LeastGap: deg(t.LeastGap), GreatestGap: deg(t.GreatestGap),
-		Error:   miles(t.Covariance.ExpectedError()),
-		Ellipse: jsonEllipse{miles(e.SemiMajorNM), miles(e.SemiMinorNM), turn(e.Axis)},
+		Bodies: [3]string(each(q.Bodies, astro.Body.String)), LeastGap: deg(q.LeastGap), GreatestGap: deg(q.GreatestGap),
+		Error: miles(q.Covariance.ExpectedError()), Ellipse: ellipseJSON(q.Covariance), Ratio: brief(q.Ratio),
 	}
 }
 

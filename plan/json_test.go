@@ -36,9 +36,12 @@ var fields = map[string]string{
 	"to":             "name lat lon",
 	"observer":       "eye_m index_error_arcmin temperature_c pressure_hpa sight_error_arcmin common_error_arcmin",
 	"events":         "kind time ship_time lat lon",
-	"windows":        "id kind begin end best lat lon course_deg speed_kn ship_time_offset bodies triads round comment",
-	"windows bodies": "body class magnitude altitude_deg azimuth_deg gha_deg dec_deg preset_deg limb",
-	"triads":         "bodies least_gap_deg greatest_gap_deg expected_error_nm ellipse",
+	"windows":        "id kind begin end best lat lon course_deg speed_kn ship_time_offset bodies triads round usable_begin usable_end round_fix pair_fix comment warnings",
+	"windows bodies": "body class magnitude altitude_deg azimuth_deg gha_deg dec_deg preset_deg limb from to",
+	"triads":         "bodies least_gap_deg greatest_gap_deg expected_error_nm ellipse ratio_to_floor",
+	"round_fix":      "bodies least_gap_deg greatest_gap_deg expected_error_nm ellipse ratio_to_floor",
+	"pair_fix":       "bodies least_gap_deg greatest_gap_deg expected_error_nm ellipse ratio_to_floor",
+	"round":          "body time altitude_deg azimuth_deg relative_deg preset_deg limb rate_arcmin_per_min preset_5_min_late_deg",
 	"ellipse":        "semi_major_nm semi_minor_nm axis_deg",
 	"days":           "ship_date ship_time_offset begin end moon_illuminated_fraction moon_waxing no_window remains",
 	"remains":        "body highest altitude_deg",
@@ -83,8 +86,8 @@ func TestJSONHasEveryField(t *testing.T) {
 func TestJSONRanges(t *testing.T) {
 	ranges := map[string][2]float64{
 		"lat": {-90, 90}, "lon": {-179.99999, 180}, "course_deg": {0, 359.99999}, "azimuth_deg": {0, 359.99999},
-		"gha_deg": {0, 359.99999}, "dec_deg": {-90, 90}, "altitude_deg": {12, 72}, "preset_deg": {12, 73},
-		"axis_deg": {0, 180}, "least_gap_deg": {0, 120}, "greatest_gap_deg": {120, 360}, "moon_illuminated_fraction": {0, 1},
+		"gha_deg": {0, 359.99999}, "dec_deg": {-90, 90}, "altitude_deg": {10, 74}, "preset_deg": {10, 75},
+		"axis_deg": {0, 180}, "least_gap_deg": {0, 180}, "greatest_gap_deg": {60, 360}, "relative_deg": {0, 359.99999}, "moon_illuminated_fraction": {0, 1},
 	}
 	for _, v := range readVoyages(t) {
 		text, m := written(t, v)

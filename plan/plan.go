@@ -32,10 +32,7 @@ func New(p *track.Passage, set Settings) (*Plan, error) {
 	group.SetLimit(runtime.GOMAXPROCS(0))
 	for i := range windows {
 		group.Go(func() error {
-			w := &windows[i]
-			w.Bodies = s.visible(w, &set, set.candidates(s.ephemeris.At(w.Best), w.Fix.Position))
-			w.Triads = triads(w.Bodies, set.CommonError)
-			s.takeRound(w, &set)
+			s.fill(&windows[i], &set)
 			return nil
 		})
 	}

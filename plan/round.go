@@ -117,11 +117,17 @@ func usable(bodies []Candidate) (begin, end time.Time, ok bool) {
 	return begin, end, begin.Before(end)
 }
 
-// takeRound fills in what of a window can be used, and its round.
-func (s *sky) takeRound(w *Window, set *Settings) {
+// fill works out what can be shot in a window whose times are known.
+func (s *sky) fill(w *Window, set *Settings) {
+	at := s.ephemeris.At(w.Best)
+	l := set.lookout(at, w.Best, w.Fix)
+	w.Bodies = s.visible(w, set, set.candidates(at, w.Fix.Position))
+	w.Triads = set.triads(w.Bodies)
+	w.Warnings = warnings(w.Bodies, at.Place(astro.Moon), &l)
 	if begin, end, ok := usable(w.Bodies); ok {
 		w.Usable = [2]time.Time{begin, end}
 	}
+	w.PairFix, _ = set.bestPair(w.Bodies)
 	w.Round = s.round(w, set)
 	var sights []Sight
 	var bodies []astro.Body
@@ -131,5 +137,4 @@ func (s *sky) takeRound(w *Window, set *Settings) {
 	if len(sights) > 0 {
 		w.RoundFix = set.quality(bodies, sights)
 	}
-	w.PairFix, _ = set.bestPair(w.Bodies)
 }

@@ -56,7 +56,7 @@ func DefaultSettings() Settings {
 		UpperSun:        civilTwilight,
 		LowerSun:        nauticalTwilight,
 		Humidity:        0.7,
-		TelescopeGain:   2,
+		TelescopeGain:   1,
 		HorizonAway:     unit.AngleFromDeg(-10),
 		HorizonUnder:    unit.AngleFromDeg(-11.5),
 		Sights:          6,

@@ -65,13 +65,13 @@ func TestTextSaysWhyThereIsNoWindow(t *testing.T) {
 func TestTextOfFewBodies(t *testing.T) {
 	p := planOf(t, hovering(t, 40, 0, "2026-11-20T12:00:00Z", 1), DefaultSettings())
 	for count, want := range map[int]string{
-		0: "Here: no body between the altitude limits.",
+		0: "Here: nothing to shoot: all is too low, too high, hidden or too faint.",
 		1: "Here: one body only: a line of position, no fix.",
 		2: "Here: two bodies only: no check on the fix.",
 	} {
 		w := p.Days[0].Windows[0]
-		w.Bodies = w.Bodies[:count]
-		w.Triads = triads(w.Bodies, p.Settings.CommonError)
+		w.Bodies, w.Round = w.Bodies[:count], nil
+		w.Triads = p.Settings.triads(w.Bodies)
 		some := &Plan{Passage: p.Passage, Clock: p.Clock, Settings: p.Settings, Days: []Day{{Day: p.Days[0].Day, Windows: []Window{w}}}}
 		text := textOf(t, some, false)
 		if !strings.Contains(text, want) || strings.Contains(text, "Triad") {

@@ -3,24 +3,19 @@ package plan
 import (
 	"math"
 
-	"github.com/soniakeys/unit"
-
 	"gloam/astro"
 )
 
-// Triad is three candidates and the fix they give.
-type Triad struct {
-	Bodies                [3]astro.Body // in order of azimuth
-	LeastGap, GreatestGap unit.Angle    // between neighbours round the horizon; 120° is ideal
-	Covariance            Covariance
-}
+// Triad is three candidates, in order of azimuth, and the fix they give. Gaps of
+// 120° are ideal.
+type Triad struct{ FixQuality }
 
 // triadsListed is how many triads a window lists.
 const triadsListed = 5
 
 // triads searches all triads of the candidates and gives the best few, in
 // order of expected error.
-func triads(bodies []Candidate, common unit.Angle) []Triad {
+func (set *Settings) triads(bodies []Candidate) []Triad {
 	parts := make([]information, len(bodies))
 	for i, c := range bodies {
 		parts[i] = Sight{c.Azimuth, c.Error}.information()
@@ -30,26 +25,27 @@ func triads(bodies []Candidate, common unit.Angle) []Triad {
 		for j := i + 1; j < len(parts); j++ {
 			pair := parts[i].add(parts[j])
 			for k := j + 1; k < len(parts); k++ {
-				cov := pair.add(parts[k]).covariance(common.Min())
-				best.offer(ranked{cov.NN + cov.EE, cov, [3]int{i, j, k}})
+				cov := pair.add(parts[k]).covariance(set.CommonError.Min())
+				best.offer(ranked{cov.NN + cov.EE, [3]int{i, j, k}})
 			}
 		}
 	}
 	var all []Triad
 	for _, r := range best {
-		a, b, c := &bodies[r.index[0]], &bodies[r.index[1]], &bodies[r.index[2]]
-		t := Triad{Bodies: [3]astro.Body{a.Body, b.Body, c.Body}, Covariance: r.covariance}
-		t.LeastGap, t.GreatestGap = Gaps(a.Azimuth, b.Azimuth, c.Azimuth)
-		all = append(all, t)
+		var names []astro.Body
+		var sights []Sight
+		for _, i := range r.index {
+			names, sights = append(names, bodies[i].Body), append(sights, Sight{bodies[i].Azimuth, bodies[i].Error})
+		}
+		all = append(all, Triad{set.quality(names, sights)})
 	}
 	return all
 }
 
 // ranked is a triad found, with the square of its expected error.
 type ranked struct {
-	square     float64
-	covariance Covariance
-	index      [3]int
+	square float64
+	index  [3]int
 }
 
 // ranking keeps the best few offered, the best first; of equals the earlier.

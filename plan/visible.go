@@ -58,7 +58,7 @@ func (l *lookout) hidden(b astro.Body, magnitude float64, hc, zn unit.Angle) str
 		return behindBlind
 	case within(l.set.Clouds, zn):
 		return underCloud
-	case b != astro.Moon && magnitude > l.faintest(hc, zn):
+	case b != astro.Sun && b != astro.Moon && magnitude > l.faintest(hc, zn):
 		return tooFaint
 	case !l.horizon(zn):
 		return noHorizon

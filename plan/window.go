@@ -31,6 +31,7 @@ type Window struct {
 	Bodies           []Candidate  // at Best, by azimuth
 	Triads           []Triad      // the best first
 	Usable           [2]time.Time // UTC: from the third body that can be shot until fewer than three can; zero where never
+	Warnings         []string     // bodies near the Moon or each other, a moonlit horizon
 	Round            []RoundSight // in order
 	RoundFix         FixQuality
 	PairFix          FixQuality // of the two best bodies; no Bodies where there are none

@@ -62,7 +62,7 @@ func (m MoonPhase) Words() string {
 func (w *Window) Comment() string {
 	switch len(w.Bodies) {
 	case 0:
-		return "no body between the altitude limits"
+		return "nothing to shoot: all is too low, too high, hidden or too faint"
 	case 1:
 		return "one body only: a line of position, no fix"
 	case 2:

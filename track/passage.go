@@ -50,17 +50,11 @@ func (r *Route) Sail(departure time.Time, speedKn float64, s Sailing) (*Passage,
 			Allowed: "two or more", Hint: "give the route from departure to arrival",
 		}
 	}
-	if departure.Before(Earliest) || !departure.Before(Latest) {
-		return nil, &Error{
-			Place: "departure", Met: departure.Format(time.RFC3339),
-			Allowed: fmt.Sprintf("%d to %d", Earliest.Year(), Latest.Year()), Hint: "check the year",
-		}
+	if err := checkDeparture(departure); err != nil {
+		return nil, err
 	}
-	if !(speedKn > 0 && speedKn <= MaxSpeedKn) {
-		return nil, &Error{
-			Place: "speed", Met: fmt.Sprintf("%v kn", speedKn),
-			Allowed: fmt.Sprintf("above 0, at most %v kn", MaxSpeedKn), Hint: "give the speed made good in knots with --speed",
-		}
+	if err := checkSpeed(speedKn); err != nil {
+		return nil, err
 	}
 	p := &Passage{Name: r.Name, Departure: departure.UTC(), SpeedKn: speedKn}
 	for i := 1; i < len(r.Waypoints); i++ {
@@ -83,6 +77,50 @@ func (r *Route) Sail(departure time.Time, speedKn float64, s Sailing) (*Passage,
 // boundaryNM is how little before a waypoint the ship counts as having reached
 // it: more than speed times the nanosecond to which an ETD is rounded.
 const boundaryNM = 1e-9
+
+func checkDeparture(t time.Time) error {
+	if t.Before(Earliest) || !t.Before(Latest) {
+		return &Error{
+			Place: "departure", Met: t.Format(time.RFC3339),
+			Allowed: fmt.Sprintf("%d to %d", Earliest.Year(), Latest.Year()), Hint: "check the year",
+		}
+	}
+	return nil
+}
+
+func checkSpeed(kn float64) error {
+	if !(kn > 0 && kn <= MaxSpeedKn) {
+		return &Error{
+			Place: "speed", Met: fmt.Sprintf("%v kn", kn),
+			Allowed: fmt.Sprintf("above 0, at most %v kn", MaxSpeedKn), Hint: "give the speed made good in knots with --speed",
+		}
+	}
+	return nil
+}
+
+// Ahead makes a passage on one rhumb line from where the ship is, for some time
+// at a speed in knots. A ship at rest creeps a metre an hour.
+func Ahead(from Position, course unit.Angle, speedKn float64, t time.Time, length time.Duration) (*Passage, error) {
+	speedKn = math.Max(speedKn, 1/mileM)
+	to := rhumbDirect(from, course, speedKn*length.Hours())
+	leg := NewLeg(Waypoint{Position: from}, Waypoint{Position: to}, Rhumb)
+	leg.Course = turn(course)
+	for _, p := range []Position{from, to} {
+		if err := checkLatitude("position", p); err != nil {
+			return nil, err
+		}
+	}
+	if err := checkDeparture(t); err != nil {
+		return nil, err
+	}
+	if err := checkSpeed(speedKn); err != nil {
+		return nil, err
+	}
+	return &Passage{
+		Legs: []Leg{leg}, Departure: t.UTC(), Arrival: t.UTC().Add(length), SpeedKn: speedKn,
+		DistanceNM: leg.DistanceNM, starts: []float64{0},
+	}, nil
+}
 
 // At gives the DR position, course and speed at an instant; at a waypoint the
 // course of the leg that begins there. Before Departure and after Arrival it

@@ -45,13 +45,8 @@ type Route struct {
 func newRoute(vertices []Waypoint) (*Route, error) {
 	r := &Route{}
 	for i, w := range vertices {
-		if math.Abs(w.Lat.Rad()) > MaxLatitude.Rad() {
-			return nil, &Error{
-				Place:   vertexPlace(i),
-				Met:     fmt.Sprintf("latitude %.4f°", w.Lat.Deg()),
-				Allowed: fmt.Sprintf("-%[1]v° to %[1]v°: at a pole neither course nor ship's time is defined", MaxLatitude.Deg()),
-				Hint:    "end the leg a few miles short of the pole",
-			}
+		if err := checkLatitude(vertexPlace(i), w.Position); err != nil {
+			return nil, err
 		}
 		if n := len(r.Waypoints); n > 0 && near(r.Waypoints[n-1].Position, w.Position, repeatNM) {
 			r.Notes = append(r.Notes, fmt.Sprintf("%s repeats the one before it and is skipped", vertexPlace(i)))
@@ -69,6 +64,19 @@ func newRoute(vertices []Waypoint) (*Route, error) {
 		}
 	}
 	return r, nil
+}
+
+// checkLatitude refuses a place too near a pole.
+func checkLatitude(place string, p Position) error {
+	if math.Abs(p.Lat.Rad()) <= MaxLatitude.Rad() {
+		return nil
+	}
+	return &Error{
+		Place:   place,
+		Met:     fmt.Sprintf("latitude %.4f°", p.Lat.Deg()),
+		Allowed: fmt.Sprintf("-%[1]v° to %[1]v°: at a pole neither course nor ship's time is defined", MaxLatitude.Deg()),
+		Hint:    "keep a few miles short of the pole",
+	}
 }
 
 func vertexPlace(i int) string { return fmt.Sprintf("point %d of the line", i+1) }

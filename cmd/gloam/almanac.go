@@ -151,11 +151,15 @@ func (f *almanacFlags) parseBodies() ([]astro.Body, error) {
 	if len(f.bodies) == 0 {
 		return append([]astro.Body{astro.Aries, astro.Sun, astro.Moon}, astro.Planets()...), nil
 	}
-	var all []astro.Body
-	for _, name := range f.bodies {
+	return parseBodies("--body", f.bodies)
+}
+
+// parseBodies reads the names of bodies that a flag gives.
+func parseBodies(flag string, names []string) (all []astro.Body, err error) {
+	for _, name := range names {
 		b, err := astro.ParseBody(name)
 		if err != nil {
-			return nil, usage(fmt.Errorf("--body: %w; nearest: %s", err, strings.Join(nearest(name), ", ")))
+			return nil, usage(fmt.Errorf("%s: %w; nearest: %s", flag, err, strings.Join(nearest(name), ", ")))
 		}
 		all = append(all, b)
 	}

@@ -21,15 +21,11 @@ import (
 
 // planFlags are what the command line says of a plan.
 type planFlags struct {
-	depart, sailing                     string
-	speed, eye, index                   float64
-	temperature, pressure               float64
-	lowest, highest, sunUpper, sunLower float64
-	sightError, commonError             float64
-	alarm                               time.Duration
-	deltaT                              deltaTFlag
-	ics, json                           string
-	changed                             func(string) bool
+	settingsFlags
+	depart, sailing string
+	speed           float64
+	alarm           time.Duration
+	ics, json       string
 }
 
 func newPlan(w world) *cobra.Command {
@@ -44,7 +40,6 @@ func newPlan(w world) *cobra.Command {
 		Example: "  gloam plan route.geojson --depart 2026-11-20T12:00Z --speed 6.5 --ics plan.ics",
 		Args:    func(cmd *cobra.Command, args []string) error { return usage(cobra.ExactArgs(1)(cmd, args)) },
 		RunE: func(cmd *cobra.Command, args []string) error {
-			f.changed = cmd.Flags().Changed
 			return f.run(args[0], w)
 		},
 		ValidArgsFunction: func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
@@ -56,25 +51,15 @@ func newPlan(w world) *cobra.Command {
 }
 
 func (f *planFlags) define(cmd *cobra.Command) {
-	set, flags := plan.DefaultSettings(), cmd.Flags()
+	flags := cmd.Flags()
 	flags.SortFlags = false
 	flags.StringVar(&f.depart, "depart", "", "departure, UTC or with a zone: 2026-11-20T12:00Z")
 	flags.Float64Var(&f.speed, "speed", 0, "speed made good, knots")
 	flags.StringVar(&f.sailing, "sailing", "rhumb", "rhumb or great-circle")
-	flags.Float64Var(&f.eye, "eye", set.EyeM, "height of eye, metres")
-	flags.Float64Var(&f.index, "index-error", 0, "index error in minutes, on the arc positive")
-	flags.Float64Var(&f.temperature, "temperature", set.TemperatureC, "air, degrees Celsius")
-	flags.Float64Var(&f.pressure, "pressure", set.PressureHPa, "air, hectopascals")
-	flags.Float64Var(&f.lowest, "lowest", set.LowestAltitude.Deg(), "lowest altitude of a body to shoot, degrees")
-	flags.Float64Var(&f.highest, "highest", set.HighestAltitude.Deg(), "highest altitude of a body to shoot, degrees")
-	flags.Float64Var(&f.sunUpper, "sun-upper", set.UpperSun.Deg(), "Sun's altitude at the bright end of a window, degrees")
-	flags.Float64Var(&f.sunLower, "sun-lower", set.LowerSun.Deg(), "Sun's altitude at the dark end of a window, degrees")
-	flags.Float64Var(&f.sightError, "sight-error", set.SightError.Min(), "standard error of one sight, minutes")
-	flags.Float64Var(&f.commonError, "common-error", set.CommonError.Min(), "standard error common to all sights of a window, minutes")
 	flags.DurationVar(&f.alarm, "alarm", 20*time.Minute, "calendar alarm before each window; 0 for none")
 	flags.StringVar(&f.ics, "ics", "", "write the calendar to this file (- for standard output, alone)")
 	flags.StringVar(&f.json, "json", "", "write the plan as JSON to this file (- for standard output, alone)")
-	f.deltaT.define(cmd)
+	f.settingsFlags.define(cmd)
 	_ = cmd.RegisterFlagCompletionFunc("sailing", cobra.FixedCompletions([]string{"rhumb", "great-circle"}, cobra.ShellCompDirectiveNoFileComp))
 }
 

@@ -7,8 +7,6 @@ import (
 	"os"
 	"time"
 
-	"github.com/soniakeys/unit"
-
 	"gloam/plan"
 	"gloam/track"
 )
@@ -36,7 +34,10 @@ func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
 	if err != nil {
 		return nil, err
 	}
-	set := f.settings(r)
+	set, err := f.settings(r.EyeM)
+	if err != nil {
+		return nil, err
+	}
 	p, err := plan.New(passage, set)
 	if err != nil {
 		return nil, err
@@ -107,18 +108,4 @@ func parseInstant(text string) (time.Time, error) {
 		}
 	}
 	return time.Time{}, fmt.Errorf("%q (a time with its zone, as 2026-11-20T12:00Z)", text)
-}
-
-func (f *planFlags) settings(r *track.Route) plan.Settings {
-	set := plan.DefaultSettings()
-	set.EyeM, set.DeltaT = f.eye, f.deltaT.at
-	if r.EyeM > 0 && !f.changed("eye") {
-		set.EyeM = r.EyeM
-	}
-	set.IndexError = unit.AngleFromMin(f.index)
-	set.TemperatureC, set.PressureHPa = f.temperature, f.pressure
-	set.LowestAltitude, set.HighestAltitude = unit.AngleFromDeg(f.lowest), unit.AngleFromDeg(f.highest)
-	set.UpperSun, set.LowerSun = unit.AngleFromDeg(f.sunUpper), unit.AngleFromDeg(f.sunLower)
-	set.SightError, set.CommonError = unit.AngleFromMin(f.sightError), unit.AngleFromMin(f.commonError)
-	return set
 }
