@@ -12,7 +12,7 @@ import (
 type Body int
 
 // The bodies of the solar system, and Aries (the true equinox of date). The
-// 57 navigational stars and Polaris follow, in alphabetical order; see [Stars].
+// 57 navigational stars follow in alphabetical order, then Polaris; see [Stars].
 const (
 	Sun Body = iota
 	Moon
@@ -64,7 +64,7 @@ func (b Body) String() string {
 // Planets gives Venus, Mars, Jupiter and Saturn.
 func Planets() []Body { return []Body{Venus, Mars, Jupiter, Saturn} }
 
-// Stars gives the 57 navigational stars and Polaris in alphabetical order.
+// Stars gives the 57 navigational stars in alphabetical order, then Polaris.
 func Stars() []Body { return Bodies()[firstStar:] }
 
 // Bodies gives all bodies: Sun, Moon, planets, Aries, stars.

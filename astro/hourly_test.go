@@ -130,6 +130,8 @@ func TestAlmanacRows(t *testing.T) {
 		{"Venus 1981", Venus, "1981-12-11T09:15:54Z", 51.8, dm(270, 35.6), dm(274, 34.3), -dm(21, 47.2), 0.8, 0.6, dm(3, 58.5), 0.15},
 		// Nautical Almanac 1980 by a worked problem (Moon, lower limb).
 		{"Moon 1980", Moon, "1980-08-22T20:42:15Z", 50.5, dm(344, 21.1), dm(354, 31.3), -dm(19, 30.7), 7.5, 1.4, dm(10, 4.9), 0.15},
+		// USCG problem 1981 (Moon, upper limb), v and d as found by differences.
+		{"Moon 1981", Moon, "1981-02-24T23:22:06Z", 51.8, dm(277, 10.3), dm(282, 32.3), -dm(10, 56.1), 14.7, -8.8, dm(5, 16.4), 0.15},
 		// Nautical Almanac 1992 by a worked problem (Moon on the meridian).
 		{"Moon 1992", Moon, "1992-07-22T16:15:26Z", 58.7, dm(157, 16.5), dm(161, 0.8), dm(14, 48.9), 12.9, 10.2, dm(3, 41.0), 0.15},
 		// Nautical Almanac 2008 by an exercise.

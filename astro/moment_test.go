@@ -19,64 +19,101 @@ func atTT(tb testing.TB, tt string, deltaT float64) *Moment {
 	return NewMoment(at.Add(-dt), dt)
 }
 
-// Sidereal time: Meeus, examples 12.a and 12.b, from memory, confirmed with IAU
-// SOFA: apparent 13h10m46.1351s, mean 128.7378734°. The older precession
-// behind the book's values is worth some 0.01 s.
+// Sidereal time: Meeus, examples 12.a and 12.b, from memory: apparent
+// 13h10m46.1351s, mean 128.7378734°. The book's IAU 1982 model starts 0.0145"
+// lower at J2000 and runs 0.28" a century faster than IAU 2006: 0.0033 s in
+// 1987. Hence 0.005 s.
 func TestSiderealTime(t *testing.T) {
 	m := momentAt(t, "1987-04-10T00:00:00Z", 55)
 	want := unit.AngleFromDeg((13 + 10.0/60 + 46.1351/3600) * 15)
-	if d := off(circle(m.gast), want) * 4; math.Abs(d) > 0.02 {
+	if d := off(circle(m.gast), want) * 4; math.Abs(d) > 0.005 {
 		t.Errorf("apparent sidereal time off by %.4f s", d)
 	}
 	m = momentAt(t, "1987-04-10T19:21:00Z", 55)
-	if d := off(circle(m.gast-m.equinoxes()), unit.AngleFromDeg(128.7378734)) * 4; math.Abs(d) > 0.02 {
+	if d := off(circle(m.gast-m.equinoxes()), unit.AngleFromDeg(128.7378734)) * 4; math.Abs(d) > 0.005 {
 		t.Errorf("mean sidereal time off by %.4f s", d)
 	}
 }
 
 // Nutation and obliquity: Meeus, example 22.a, from memory, confirmed with
-// SOFA: Δψ = -3.788", ε = 23°26'36.850". IAU 2006 lowers the mean obliquity by
-// 0.04".
+// SOFA: Δψ = -3.788", Δε = +9.443", ε = 23°26'36.850". IAU 2006 lowers the mean
+// obliquity by 0.0392" in 1987; the rest is the last figure printed.
 func TestNutation(t *testing.T) {
 	m := atTT(t, "1987-04-10T00:00:00Z", 55)
 	if d := m.dpsi/arcsecond + 3.788; math.Abs(d) > 0.002 {
 		t.Errorf("Δψ off by %.4f\"", d)
 	}
-	if d := m.obliq/arcsecond - (23*3600 + 26*60 + 36.850); math.Abs(d) > 0.05 {
+	if d := m.obliq/arcsecond - (23*3600 + 26*60 + 36.850 - 0.0392); math.Abs(d) > 0.002 {
 		t.Errorf("ε off by %.4f\"", d)
 	}
 }
 
-// Apparent places, from memory, confirmed with SOFA: Meeus, examples 25.b (Sun),
-// 33.a (Venus) and 47.a (Moon; its shortened theory keeps to 10" in longitude).
+func hms(h, m, s float64) unit.Angle { return unit.AngleFromDeg(15 * (h + m/60 + s/3600)) }
+func dms(d, m, s float64) unit.Angle { return degMin(d, m+s/60) }
+
+// Apparent places: Meeus, examples 13.b and 33.a (Venus), 25.b (Sun) and 47.a
+// (Moon), from memory. The book's own rounding, its FK5 equinox and its older
+// precession are worth some 0.05"; its shortened theory of the Moon keeps to 10"
+// in longitude and 4" in latitude.
 func TestMeeusPlaces(t *testing.T) {
-	hms := func(h, m, s float64) float64 { return 15 * (h + m/60 + s/3600) }
 	for _, c := range []struct {
 		name    string
 		body    Body
 		tt      string
-		ra, dec float64 // degrees
+		ra, dec unit.Angle
 		seconds float64 // allowed, of arc
 	}{
-		{"25.b", Sun, "1992-10-13T00:00:00Z", hms(13, 13, 30.749), -(7 + 47.0/60 + 1.74/3600), 0.3},
-		{"33.a", Venus, "1992-12-20T00:00:00Z", hms(21, 4, 41.454), -(18 + 53.0/60 + 16.84/3600), 0.3},
-		{"47.a", Moon, "1992-04-12T00:00:00Z", 134.688470, 13.768368, 10},
+		{"13.b", Venus, "1987-04-10T19:21:55Z", hms(23, 9, 16.641), dms(-6, 43, 11.61), 0.1},
+		{"25.b", Sun, "1992-10-13T00:00:00Z", hms(13, 13, 30.749), dms(-7, 47, 1.74), 0.1},
+		{"33.a", Venus, "1992-12-20T00:00:00Z", hms(21, 4, 41.454), dms(-18, 53, 16.84), 0.1},
+		{"47.a", Moon, "1992-04-12T00:00:00Z", unit.AngleFromDeg(134.688470), unit.AngleFromDeg(13.768368), 10},
 	} {
 		m := atTT(t, c.tt, 59)
 		p := m.Place(c.body)
 		ra, dec := circle(m.gast-p.GHA.Rad()), p.Dec
-		if e, n := off(ra, unit.AngleFromDeg(c.ra))*dec.Cos()*60, off(dec, unit.AngleFromDeg(c.dec))*60; math.Hypot(e, n) > c.seconds {
+		if e, n := off(ra, c.ra)*dec.Cos()*60, off(dec, c.dec)*60; math.Hypot(e, n) > c.seconds {
 			t.Errorf("example %s: %v off by %.2f\" in RA cos Dec and %.2f\" in Dec", c.name, c.body, e, n)
 		}
 	}
-	// 47.a: distance 368409.7 km, parallax 0.991990°; the lit part of 48.a 0.6786.
-	p := atTT(t, "1992-04-12T00:00:00Z", 59).Place(Moon)
-	if math.Abs(p.HP.Deg()-0.991990) > 0.00005 || math.Abs(p.Illuminated-0.6786) > 0.001 {
-		t.Errorf("Moon's parallax %.6f°, lit %.4f", p.HP.Deg(), p.Illuminated)
+}
+
+// Distance and look, from memory. Meeus gives the Sun's distance in 25.b and
+// that of Venus in 33.a, the Moon's parallax in 47.a (10 km of 368409.7 is
+// 0.00003°), the lit parts in 41.a and 48.a. The magnitude of Venus is by the
+// formula of the Astronomical Almanac from 1984; the book's other one, on
+// Müller's scale, gives -3.8.
+func TestMeeusLooks(t *testing.T) {
+	distance := func(p Place) float64 { return equatorAU / p.HP.Sin() }
+	sun := atTT(t, "1992-10-13T00:00:00Z", 59).Place(Sun)
+	venus := atTT(t, "1992-12-20T00:00:00Z", 59).Place(Venus)
+	moon := atTT(t, "1992-04-12T00:00:00Z", 59).Place(Moon)
+	for _, c := range []struct {
+		name                 string
+		got, want, tolerance float64
+	}{
+		{"25.b, the Sun's distance (AU; the book's series are cut)", distance(sun), 0.99760775, 2e-6},
+		{"33.a, distance of Venus (AU, last figure)", distance(venus), 0.91095, 6e-6},
+		{"41.a, lit part of Venus (last figure)", venus.Illuminated, 0.647, 0.0006},
+		{"41, magnitude of Venus (another fit of the same curve)", venus.Magnitude, -4.22, 0.1},
+		{"47.a, the Moon's parallax (degrees)", moon.HP.Deg(), 0.991990, 0.00003},
+		{"48.a, lit part of the Moon (last figure)", moon.Illuminated, 0.6786, 0.0001},
+	} {
+		if math.Abs(c.got-c.want) > c.tolerance {
+			t.Errorf("example %s: %.7f, want %.7f", c.name, c.got, c.want)
+		}
 	}
-	// 41.a: the lit part of Venus 0.647.
-	if p := atTT(t, "1992-12-20T00:00:00Z", 59).Place(Venus); math.Abs(p.Illuminated-0.647) > 0.001 {
-		t.Errorf("Venus lit %.4f, want 0.647", p.Illuminated)
+}
+
+// Equation of time: Meeus, example 28.a, from memory: 3.427351°. There the mean
+// Sun is that of TD, here GHA goes by UT, in which it has 0.0027379 ΔT less to
+// run. The book's mean longitude differs from the mean Sun of UT by 0.43", 0.03
+// s. Hence 0.05 s.
+func TestEquationOfTime(t *testing.T) {
+	const deltaT = 59
+	m := atTT(t, "1992-10-13T00:00:00Z", deltaT)
+	got := off(m.Place(Sun).GHA, unit.AngleFromDeg(180-deltaT*15.0/3600)) * 4
+	if want := 3.427351*240 - 0.0027379*deltaT; math.Abs(got-want) > 0.05 {
+		t.Errorf("%.3f s, want %.3f s", got, want)
 	}
 }
 

@@ -33,11 +33,12 @@ func (l Limb) String() string { return [...]string{"centre", "lower", "upper"}[l
 // of eye in metres (Nautical Almanac, explanation of the tables).
 func (s Sextant) Dip() unit.Angle { return unit.AngleFromMin(1.76 * math.Sqrt(s.EyeM)) }
 
-// Refraction at an apparent altitude, above -2°: Bennett's formula (Meeus ch. 16, good to
-// 0.07'), made to fit temperature and pressure by the factor 0.28 P/(T + 273)
-// of the Nautical Almanac.
+// Refraction at an apparent altitude: Bennett's formula (Meeus ch. 16, good to
+// 0.07' above the horizon), made to fit temperature and pressure by the factor
+// 0.28 P/(T + 273) of the Nautical Almanac. The formula turns over at -1.7°;
+// below, its value there holds.
 func (s Sextant) Refraction(apparent unit.Angle) unit.Angle {
-	lowest := unit.AngleFromDeg(-2)
+	lowest := unit.AngleFromDeg(-1.69)
 	factor := 0.28 * s.PressureHPa / (s.TemperatureC + 273)
 	return refraction.Bennett(max(apparent, lowest)).Mul(factor)
 }

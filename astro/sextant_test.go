@@ -44,15 +44,54 @@ func TestRefraction(t *testing.T) {
 		}
 	}
 	// Meeus, example 16.a, from memory: apparent 0° 30', R = 28.754'.
-	// The almanac's factor for standard air is 0.9993.
+	// The almanac's factor for standard air is 0.9993. True 0° 1.246', again but
+	// for the factor, 0.02'.
 	if got := standard.Refraction(degMin(0, 30)).Min() / (0.28 * 1010 / 283); math.Abs(got-28.754) > 0.001 {
 		t.Errorf("refraction at 0° 30' is %.4f', want 28.754'", got)
+	}
+	if got := standard.Observed(degMin(0, 30), Place{}, Centre).Min(); math.Abs(got-1.246) > 0.03 {
+		t.Errorf("apparent 0° 30' is true %.4f', want 1.246'", got)
 	}
 	// Pub. No. 9, from memory: at 88 °F and 982 mb, apparent altitude 3° 16.1',
 	// 1.4' less; the formula itself gives 1.29'.
 	hot := Sextant{TemperatureC: 31.1, PressureHPa: 982}
 	if got := (standard.Refraction(degMin(3, 16.1)) - hot.Refraction(degMin(3, 16.1))).Min(); math.Abs(got-1.35) > 0.1 {
 		t.Errorf("hot thin air takes %.2f' off, want 1.3' to 1.4'", got)
+	}
+}
+
+// Star corrections of the almanac's table at round altitudes, from memory: 0.05'
+// for its last figure and 0.07' for Bennett's formula.
+func TestRefractionByAltitude(t *testing.T) {
+	for deg, want := range map[float64]float64{10: 5.3, 15: 3.6, 20: 2.6, 30: 1.7, 45: 1.0, 60: 0.6, 90: 0} {
+		if got := standard.Refraction(degMin(deg, 0)).Min(); math.Abs(got-want) > 0.12 {
+			t.Errorf("refraction at %v° is %.3f', want %.1f'", deg, got, want)
+		}
+	}
+}
+
+// Refraction falls all the way up from where the formula turns over, holds still
+// below that, and is less in hot or thin air.
+func TestRefractionFalls(t *testing.T) {
+	hot, thin := standard, standard
+	hot.TemperatureC, thin.PressureHPa = 40, 960
+	floor := standard.Refraction(unit.AngleFromDeg(-1.69))
+	for _, h := range []float64{-1.75, -3, -4.4, -10, -90} {
+		if r := standard.Refraction(unit.AngleFromDeg(h)); r != floor {
+			t.Errorf("%.4f' at %v°, want %.4f'", r.Min(), h, floor.Min())
+		}
+	}
+	last := floor
+	for h := -1.6; h <= 90; h += 0.2 {
+		at := unit.AngleFromDeg(h)
+		r := standard.Refraction(at)
+		if r >= last || r.Min() < -0.01 {
+			t.Fatalf("%.4f' at %.1f°, %.4f' below", r.Min(), h, last.Min())
+		}
+		if h < 89 && (hot.Refraction(at) >= r || thin.Refraction(at) >= r) {
+			t.Fatalf("hot or thin air bends more at %.1f°", h)
+		}
+		last = r
 	}
 }
 
@@ -114,6 +153,31 @@ func TestObservedLowSun(t *testing.T) {
 	}
 }
 
+// Parallax and semidiameter by the almanac's rules against plain geometry, on a
+// sphere and without air: the altitude at the Earth's centre from that of a limb
+// at the surface. The rules take small angles for their sines, which at 1° is
+// worth some 0.003'.
+func TestObservedMoonGeometry(t *testing.T) {
+	vacuum := Sextant{TemperatureC: 10}
+	worst := 0.0
+	for hp := 53.9; hp <= 61.5; hp += 0.4 {
+		p := Place{HP: unit.AngleFromMin(hp), SD: unit.AngleFromMin(hp * moonRadius)}
+		for hc := 1.0; hc < 89; hc++ {
+			h := unit.AngleFromDeg(hc)
+			up, along := h.Sin()-p.HP.Sin(), h.Cos() // the Moon from the surface, in distances
+			seen := math.Atan2(up, along)
+			radius := math.Asin(moonRadius * p.HP.Sin() / math.Hypot(up, along))
+			for limb, hs := range map[Limb]float64{Lower: seen - radius, Upper: seen + radius} {
+				worst = math.Max(worst, math.Abs((vacuum.Observed(unit.Angle(hs), p, limb) - h).Min()))
+			}
+		}
+	}
+	if worst > 0.005 {
+		t.Errorf("rules and geometry differ by up to %.4f'", worst)
+	}
+	t.Logf("worst %.4f'", worst)
+}
+
 // Preset inverts Observed to 0.001' for all it may be asked.
 func TestPresetInvertsObserved(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
@@ -131,4 +195,12 @@ func TestPresetInvertsObserved(t *testing.T) {
 			t.Fatalf("%.5f' off", d)
 		}
 	})
+}
+
+func TestLimbNames(t *testing.T) {
+	for limb, want := range map[Limb]string{Centre: "centre", Lower: "lower", Upper: "upper"} {
+		if limb.String() != want {
+			t.Errorf("limb %d is %q, want %q", int(limb), limb, want)
+		}
+	}
 }
