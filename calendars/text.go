@@ -81,10 +81,9 @@ func (t *text) bodies(w *plan.Window) {
 		t.line("%s", w.Comment())
 	} else {
 		best := w.Triads[0]
-		ellipse := best.Covariance.Ellipse()
 		t.line("Best: %s", best.Names())
 		t.line("Gaps %.0f° to %.0f°, expected error %.2f NM", best.LeastGap.Deg(), best.GreatestGap.Deg(), best.Covariance.ExpectedError())
-		t.line("95 %% ellipse %.1f x %.1f NM along %s", ellipse.SemiMajorNM, ellipse.SemiMinorNM, dm.Bearing(ellipse.Axis))
+		t.line("95 %% ellipse, NM: %s", best.Covariance.Ellipse())
 	}
 	t.line("")
 	if len(w.Round) > 0 {

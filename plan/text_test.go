@@ -65,7 +65,7 @@ func TestTextSaysWhyThereIsNoWindow(t *testing.T) {
 func TestTextOfFewBodies(t *testing.T) {
 	p := planOf(t, hovering(t, 40, 0, "2026-11-20T12:00:00Z", 1), DefaultSettings())
 	for count, want := range map[int]string{
-		0: "Here: nothing to shoot: all is too low, too high, hidden or too faint.",
+		0: "Here: nothing to shoot: too low, too high, hidden, too faint or without horizon.",
 		1: "Here: one body only: a line of position, no fix.",
 		2: "Here: two bodies only: no check on the fix.",
 	} {

@@ -22,8 +22,13 @@ func (t *text) round(w *Window) {
 		t.line("%s   %s  %-16s  %s  %s  %s  %+7.1f'   %s", t.shipTime(r.Time).Format("15:04"), r.Time.Format("15:04:05"),
 			Candidate{Body: r.Body, Limb: r.Limb}.Label(), dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative), r.Rate.Min(), dm.Altitude(r.Late))
 	}
+	t.line("")
+	t.line("Fix          error, NM  of the least  gaps      95 %% ellipse, NM")
 	t.fix("round", w.RoundFix)
-	t.fix("two best", w.PairFix)
+	if len(w.Triads) > 0 {
+		t.fix("best triad", w.Triads[0].FixQuality)
+	}
+	t.fix("best pair", w.PairFix)
 }
 
 // fix prints what fix some sights give.
@@ -32,12 +37,20 @@ func (t *text) fix(what string, q FixQuality) {
 	case len(q.Bodies) < 2:
 		return
 	case math.IsInf(q.Covariance.ExpectedError(), 1):
-		t.line("Fix of the %s: none, the lines do not cross.", what)
+		t.line("%-10s   none: the lines do not cross", what)
 	default:
-		e := q.Covariance.Ellipse()
-		t.line("Fix of the %s: %.2f NM, %.2f of the least; 95 %% in %.1f x %.1f NM along %s", what,
-			q.Covariance.ExpectedError(), q.Ratio, e.SemiMajorNM, e.SemiMinorNM, dm.Bearing(e.Axis))
+		t.line("%-10s   %-9.2f  %-12.2f  %-8s  %s", what, q.Covariance.ExpectedError(), q.Ratio, q.gaps(), q.Covariance.Ellipse())
 	}
+}
+
+func (q FixQuality) gaps() string {
+	return fmt.Sprintf("%.0f-%.0f°", q.LeastGap.Deg(), q.GreatestGap.Deg())
+}
+
+// String writes the half-axes in NM and the bearing of the longer one: "1.1 x
+// 1.0 along 010°".
+func (e Ellipse) String() string {
+	return fmt.Sprintf("%.1f x %.1f along %s", e.SemiMajorNM, e.SemiMinorNM, dm.Bearing(e.Axis))
 }
 
 func (t *text) triads(w *Window) {
@@ -47,10 +60,7 @@ func (t *text) triads(w *Window) {
 	t.line("")
 	t.line("Triad                                gaps      error  95 %% ellipse, NM")
 	for i, tr := range w.Triads {
-		e := tr.Covariance.Ellipse()
-		t.line("%d  %-32s  %3.0f-%3.0f°  %.2f  %.1f x %.1f along %s", i+1, tr.Names(),
-			tr.LeastGap.Deg(), tr.GreatestGap.Deg(), tr.Covariance.ExpectedError(),
-			e.SemiMajorNM, e.SemiMinorNM, dm.Bearing(e.Axis))
+		t.line("%d  %-32s  %-8s  %.2f  %s", i+1, tr.Names(), tr.gaps(), tr.Covariance.ExpectedError(), tr.Covariance.Ellipse())
 	}
 }
 
@@ -62,6 +72,9 @@ func (q FixQuality) Names() string {
 // bodies prints those of the triads listed, and all of them where there is no
 // triad; the others follow in one paragraph.
 func (t *text) bodies(w *Window) {
+	if len(w.Bodies) == 0 {
+		return
+	}
 	var others []string
 	t.line("")
 	t.line("Body              set Hs     Zn    Hc          mag  can be shot  in triads")

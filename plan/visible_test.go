@@ -183,7 +183,7 @@ func TestReportAgreesWithPlan(t *testing.T) {
 		t.Errorf("%d bodies to shoot, %d in the round", shootable, len(r.Window.Round))
 	}
 	var text bytes.Buffer
-	if err := r.WriteText(&text, false); err != nil || !strings.Contains(text.String(), "Fix of the round") {
+	if err := r.WriteText(&text, false); err != nil || !strings.Contains(text.String(), "best triad") {
 		t.Errorf("%v in\n%s", err, &text)
 	}
 }

@@ -58,15 +58,18 @@ func (m MoonPhase) Words() string {
 }
 
 // Comment says what a window lacks, in words: nothing to shoot, or too few
-// bodies for a checked fix. It is empty where there is a triad.
+// bodies or too little time for a checked fix. Else it is empty.
 func (w *Window) Comment() string {
 	switch len(w.Bodies) {
 	case 0:
-		return "nothing to shoot: all is too low, too high, hidden or too faint"
+		return "nothing to shoot: too low, too high, hidden, too faint or without horizon"
 	case 1:
 		return "one body only: a line of position, no fix"
 	case 2:
 		return "two bodies only: no check on the fix"
+	}
+	if n := len(w.Round); n > 0 && n < 3 {
+		return fmt.Sprintf("time for %d only at this pace: no check on the fix", n)
 	}
 	return ""
 }
