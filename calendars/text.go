@@ -49,6 +49,7 @@ func description(p *plan.Plan, d *plan.Day, w *plan.Window) string {
 	for _, warning := range w.Warnings {
 		t.line("Mind: %s", warning)
 	}
+	t.line("Sun from %.4g° to %.4g°", p.Settings.UpperSun.Deg(), p.Settings.LowerSun.Deg())
 	t.line("DR %v", w.Fix.Position)
 	t.line("Course %s, %.1f kn", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
 	t.line("")
@@ -59,6 +60,19 @@ func description(p *plan.Plan, d *plan.Day, w *plan.Window) string {
 		t.line("%s", c)
 	}
 	return strings.TrimSpace(t.String())
+}
+
+// none says for each date of a voyage why it has no window.
+func none(p *plan.Plan) string {
+	t := &text{plan: p}
+	for _, d := range p.Days {
+		t.line("%s: %s", d.Date.Format("2 January"), d.NoWindow)
+	}
+	t.line("")
+	for _, c := range plan.Cautions {
+		t.line("%s", c)
+	}
+	return t.String()
 }
 
 // nearby is how far from a window an event still belongs to it.
@@ -77,12 +91,14 @@ func capital(words string) string { return strings.ToUpper(words[:1]) + words[1:
 // listed, or for all there are.
 func (t *text) bodies(w *plan.Window) {
 	t.line("")
-	if len(w.Triads) == 0 {
-		t.line("%s", w.Comment())
-	} else {
+	if c := w.Comment(); c != "" {
+		t.line("%s", capital(c))
+	}
+	if len(w.Triads) > 0 {
 		best := w.Triads[0]
 		t.line("Best: %s", best.Names())
-		t.line("Gaps %.0f° to %.0f°, expected error %.2f NM", best.LeastGap.Deg(), best.GreatestGap.Deg(), best.Covariance.ExpectedError())
+		t.line("Gaps %.0f° to %.0f°", best.LeastGap.Deg(), best.GreatestGap.Deg())
+		t.line("Expected error %.2f NM", best.Covariance.ExpectedError())
 		t.line("95 %% ellipse, NM: %s", best.Covariance.Ellipse())
 	}
 	t.line("")
@@ -91,7 +107,10 @@ func (t *text) bodies(w *plan.Window) {
 	}
 	for _, r := range w.Round {
 		label := plan.Candidate{Body: r.Body, Limb: r.Limb}.Label()
-		t.line("%s %s %s Zn %s bow %s", t.plan.Clock.At(r.Time).Format("15:04"), label, dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative))
+		t.line("%s %s %s Zn %s bow %s", t.plan.Clock.At(r.Time).Format("15:04:05"), label, dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative))
+	}
+	if len(w.Bodies) == 0 {
+		return
 	}
 	t.line("")
 	t.line("At best: set Hs, Zn (Hc, magnitude)")

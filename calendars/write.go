@@ -40,6 +40,9 @@ func Write(w io.Writer, p *plan.Plan, opt Options) error {
 			addEvent(cal, p, &p.Days[i], &p.Days[i].Windows[j], voyage, opt)
 		}
 	}
+	if len(cal.Events()) == 0 {
+		addNone(cal, p, voyage, opt)
+	}
 	var b bytes.Buffer
 	if err := cal.SerializeTo(&b, ics.WithNewLineWindows); err != nil {
 		return err
@@ -63,7 +66,7 @@ func addEvent(cal *ics.Calendar, p *plan.Plan, d *plan.Day, w *plan.Window, voya
 	e.SetDescription(clean(description(p, d, w)))
 	e.SetLocation(w.Fix.Position.String())
 	e.SetGeo(fmt.Sprintf("%.6f", w.Fix.Lat.Deg()), fmt.Sprintf("%.6f", w.Fix.Lon.Deg()))
-	e.AddCategory("sights")
+	e.AddCategory("SIGHTS")
 	e.AddCategory(w.Kind.Words())
 	e.SetTimeTransparency(ics.TransparencyTransparent)
 	if opt.Alarm > 0 {
@@ -72,6 +75,20 @@ func addEvent(cal *ics.Calendar, p *plan.Plan, d *plan.Day, w *plan.Window, voya
 		a.SetTrigger(before(opt.Alarm))
 		a.SetDescription(summary(w))
 	}
+}
+
+// addNone adds the one event of a voyage without windows, since a calendar must
+// hold something (RFC 5545, 3.6): it lasts the voyage and says why.
+func addNone(cal *ics.Calendar, p *plan.Plan, voyage string, opt Options) {
+	e := cal.AddEvent("no-window-" + voyage + "@gloam")
+	e.SetDtStampTime(opt.Stamp)
+	e.SetStartAt(whole(p.Passage.Departure))
+	e.SetEndAt(whole(p.Passage.Arrival).Add(time.Second))
+	e.SetSequence(0)
+	e.SetSummary("No star window on this voyage")
+	e.SetDescription(clean(none(p)))
+	e.AddCategory("sights")
+	e.SetTimeTransparency(ics.TransparencyTransparent)
 }
 
 // before writes a duration as a trigger ahead of the event's start.

@@ -197,6 +197,38 @@ func FuzzNames(f *testing.F) {
 	})
 }
 
+// A calendar must hold a component (RFC 5545, 3.6): a voyage in polar day gets
+// one event that lasts as long and says why there is no window.
+func TestVoyageWithoutWindow(t *testing.T) {
+	r := &track.Route{Name: "Polar day", Waypoints: []track.Waypoint{
+		{Position: track.PositionFromDeg(78, 10)}, {Position: track.PositionFromDeg(79, 8)},
+	}}
+	passage, err := r.Sail(time.Date(2027, 6, 20, 6, 0, 0, 0, time.UTC), 5, track.Rhumb)
+	if err != nil {
+		t.Fatal(err)
+	}
+	p, err := plan.New(passage, plan.DefaultSettings())
+	if err != nil {
+		t.Fatal(err)
+	}
+	cal := parsed(t, p, usual)
+	if len(cal.parts) != 1 {
+		t.Fatalf("%d events, want 1", len(cal.parts))
+	}
+	e := cal.parts[0]
+	if got := e.one(t, "DTSTART"); got != "20270620T060000Z" {
+		t.Errorf("it begins %s, not with the voyage", got)
+	}
+	if got := unescape(e.one(t, "DESCRIPTION")); !strings.Contains(got, "20 June: the Sun does not sink to -6°") {
+		t.Errorf("it does not say why: %q", got)
+	}
+	for _, command := range [][]string{pythonParser(), nodeParser()} {
+		if command != nil && len(read(t, command, written(t, p, usual))) != 1 {
+			t.Errorf("%s does not find the one event", command[0])
+		}
+	}
+}
+
 type failing struct{}
 
 func (failing) Write([]byte) (int, error) { return 0, errors.New("no space left") }

@@ -17,9 +17,9 @@ func (t *text) round(w *Window) {
 		return
 	}
 	t.line("")
-	t.line("Round   UTC       Body              set Hs     Zn    bow   a minute  5 min late")
+	t.line("Round     UTC    Body              set Hs     Zn    bow   a minute  5 min late")
 	for _, r := range w.Round {
-		t.line("%s   %s  %-16s  %s  %s  %s  %+7.1f'   %s", t.shipTime(r.Time).Format("15:04"), r.Time.Format("15:04:05"),
+		t.line("%s  %s  %-16s  %s  %s  %s  %+7.1f'   %s", t.shipTime(r.Time).Format("15:04:05"), r.Time.Format("15:04"),
 			Candidate{Body: r.Body, Limb: r.Limb}.Label(), dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative), r.Rate.Min(), dm.Altitude(r.Late))
 	}
 	t.line("")
