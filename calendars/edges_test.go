@@ -80,7 +80,7 @@ func TestSummaryOfFewBodies(t *testing.T) {
 			t.Errorf("%d bodies: summary %q, want %q in it", n, got, want)
 		}
 		text := unescape(e.one(t, "DESCRIPTION"))
-		if !strings.Contains(text, "\n"+want) {
+		if !strings.Contains(text, "\n"+capital(want)) {
 			t.Errorf("%d bodies: no %q in\n%s", n, want, text)
 		}
 		for _, c := range w.Bodies {
