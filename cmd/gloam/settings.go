@@ -56,6 +56,9 @@ func (f *settingsFlags) define(cmd *cobra.Command) {
 	})
 }
 
+// settingHint goes with a setting out of range.
+const settingHint = "change the flag that sets it; --help lists them all"
+
 // settings turns the flags into settings; eyeM, where above zero, is the height
 // of eye that a file gives, over which the flag wins.
 func (f *settingsFlags) settings(eyeM float64) (plan.Settings, error) {

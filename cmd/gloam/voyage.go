@@ -40,7 +40,7 @@ func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
 	}
 	p, err := plan.New(passage, set)
 	if err != nil {
-		return nil, err
+		return nil, hinted{err, settingHint}
 	}
 	p.Notes = r.Notes
 	return p, nil
