@@ -84,22 +84,27 @@ func (s *sky) events() []Event {
 // where any hour angle may be called zero: 60 m.
 const poleMiss = 1e-5
 
-// meridianPassages finds when the Sun's LHA is zero. It searches cos φ cos δ
-// sin LHA, which stays smooth even where longitude runs wild.
+// meridianPassages finds when the Sun's LHA is zero.
 func (s *sky) meridianPassages() []crossing {
-	lha := func(t time.Time) (unit.Angle, float64) {
-		fix := s.passage.At(t)
-		p := s.ephemeris.Place(astro.Sun, t)
-		return p.GHA + fix.Lon, fix.Lat.Cos() * p.Dec.Cos()
-	}
 	var passages []crossing
-	for _, c := range s.crossings(func(t time.Time) float64 {
-		angle, scale := lha(t)
-		return scale * angle.Sin()
-	}) {
-		if angle, scale := lha(c.time); angle.Cos() > 0 && scale > poleMiss {
+	for _, c := range s.crossings(s.transit) {
+		if angle, scale := s.sunLHA(c.time); angle.Cos() > 0 && scale > poleMiss {
 			passages = append(passages, c)
 		}
 	}
 	return passages
+}
+
+// transit is cos φ cos δ sin LHA of the Sun, which is zero on the meridian and
+// stays smooth even where longitude runs wild.
+func (s *sky) transit(t time.Time) float64 {
+	angle, scale := s.sunLHA(t)
+	return scale * angle.Sin()
+}
+
+// sunLHA gives the Sun's LHA, and cos φ cos δ.
+func (s *sky) sunLHA(t time.Time) (lha unit.Angle, scale float64) {
+	fix := s.passage.At(t)
+	p := s.ephemeris.Place(astro.Sun, t)
+	return p.GHA + fix.Lon, fix.Lat.Cos() * p.Dec.Cos()
 }
