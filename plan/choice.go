@@ -21,6 +21,7 @@ type chooser struct {
 	prior   information
 	loss    float64
 	pace    time.Duration
+	buffer  []exchange
 }
 
 func (set *Settings) chooser(bodies []Candidate) *chooser {
@@ -110,9 +111,10 @@ type exchange struct {
 	quick   float64
 }
 
-// exchanges lists all exchanges of a set of at most n.
+// exchanges lists all exchanges of a set of at most n; the list is good until
+// the next call.
 func (c *chooser) exchanges(set []int, n int) []exchange {
-	all := make([]exchange, 0, (1+len(set))*len(c.options))
+	all := c.buffer[:0]
 	var sum information
 	for _, i := range set {
 		sum = sum.add(c.scaled[i])
@@ -129,6 +131,7 @@ func (c *chooser) exchanges(set []int, n int) []exchange {
 			all = append(all, exchange{i, k, c.quick(with.add(c.scaled[out].scale(-1)))})
 		}
 	}
+	c.buffer = all
 	return all
 }
 
@@ -158,7 +161,9 @@ func (c *chooser) climb(set []int, n int) []int {
 	least := c.criterion(set)
 	for {
 		all := c.exchanges(set, n)
-		slices.SortStableFunc(all, func(a, b exchange) int { return cmp.Compare(a.quick, b.quick) })
+		slices.SortFunc(all, func(a, b exchange) int {
+			return cmp.Or(cmp.Compare(a.quick, b.quick), cmp.Compare(a.in, b.in), cmp.Compare(a.out, b.out))
+		})
 		var better []int
 		for _, x := range all[:min(len(all), looked)] {
 			next := insert(set, x)
