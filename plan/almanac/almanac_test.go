@@ -11,6 +11,8 @@ import (
 	"testing"
 	"time"
 
+	"github.com/soniakeys/unit"
+
 	"gloam/astro"
 )
 
@@ -140,6 +142,18 @@ func FuzzReadNeeds(f *testing.F) {
 			}
 		}
 	})
+}
+
+// Angles carry: 359° 59.96' is a whole turn, which is nothing.
+func TestAnglesCarry(t *testing.T) {
+	for minutes, want := range map[float64]string{360*60 - 0.04: "000° 00.0'", 359*60 + 59.94: "359° 59.9'", 12*60 + 29.96: "012° 30.0'"} {
+		if got := wide(unit.AngleFromMin(minutes)); got != want {
+			t.Errorf("%v' written %s, want %s", minutes, got, want)
+		}
+	}
+	if got := fine(unit.AngleFromMin(360*60 - 0.004)); got != "000° 00.00'" {
+		t.Errorf("a whole turn written %s", got)
+	}
 }
 
 func TestWritersTellOfErrors(t *testing.T) {

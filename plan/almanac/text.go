@@ -81,8 +81,12 @@ func (t *text) row(h astro.Hourly) {
 	}
 }
 
-// wide writes an angle with three figures of degrees: 012° 30.0'.
-func wide(a unit.Angle) string { return strings.TrimRight(dm.Lon(a), " EW") }
+// wide writes an angle in [0°, 360°) with three figures of degrees: 012° 30.0'.
+// What rounds to a whole turn is nothing.
+func wide(a unit.Angle) string {
+	tenths := math.Mod(math.Round(a.Min()*10), 360*600)
+	return strings.TrimRight(dm.Lon(unit.AngleFromMin(tenths/10)), " EW")
+}
 
 // change writes a change of declination: its size and its direction.
 func change(d unit.Angle) string {
