@@ -69,7 +69,7 @@ func addEvent(cal *ics.Calendar, p *plan.Plan, d *plan.Day, w *plan.Window, voya
 	e.AddCategory("SIGHTS")
 	e.AddCategory(w.Kind.Words())
 	e.SetTimeTransparency(ics.TransparencyTransparent)
-	if opt.Alarm > 0 {
+	if opt.Alarm >= time.Second {
 		a := e.AddAlarm()
 		a.SetAction(ics.ActionDisplay)
 		a.SetTrigger(before(opt.Alarm))

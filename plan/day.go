@@ -81,6 +81,9 @@ func (s *sky) noWindow(d Day, set Settings, clock *track.Clock, every []Window) 
 		}
 	}
 	end := d.Begin.Add(24 * time.Hour)
+	if d.To.Before(s.passage.Arrival) {
+		end = d.To
+	}
 	lowest, _ := highest(d.Begin, end, func(t time.Time) float64 { return -s.altitude(astro.Sun, t).Rad() })
 	greatest, _ := highest(d.Begin, end, func(t time.Time) float64 { return s.altitude(astro.Sun, t).Rad() })
 	low, high := unit.Angle(-lowest), unit.Angle(greatest)
@@ -105,7 +108,8 @@ func (s *sky) remains(d Day, set Settings) []Remain {
 	var all []Remain
 	for _, b := range []astro.Body{astro.Sun, astro.Moon, astro.Venus} {
 		value, at := highest(d.From, d.To, func(t time.Time) float64 {
-			return min(s.altitude(b, t), set.HighestAltitude).Rad()
+			h := s.altitude(b, t)
+			return min(h, 2*set.HighestAltitude-h).Rad() // above the limit the lower the better
 		})
 		if unit.Angle(value) < set.LowestAltitude {
 			continue

@@ -77,7 +77,7 @@ const (
 	// skyRate bounds how fast Sun or Moon turn over a place at rest: 15.05° an
 	// hour and the motion of their own, in radians an hour, with room.
 	skyRate = 0.28
-	// degreePerMile is the ship's greatest turn of the vertical, radians per
+	// radianPerMile is the ship's greatest turn of the vertical, radians per
 	// nautical mile: the meridian is most curved at the equator, 1852 m in
 	// 6335 km.
 	radianPerMile = 1.852 / 6335

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"github.com/paulmach/orb"
 )
@@ -145,7 +146,7 @@ func (f *feature) join(parts orb.MultiLineString) (orb.LineString, error) {
 	if len(parts) == 0 {
 		return nil, &Error{f.place, "no parts", "one or more", "draw the route as one line"}
 	}
-	line := parts[0]
+	line := slices.Clone(parts[0])
 	for i, next := range parts[1:] {
 		end, start := line[len(line)-1], next[0]
 		if math.Abs(end.Lon()) != 180 || start.Lon() != -end.Lon() || math.Abs(end.Lat()-start.Lat()) > 1e-6 {
@@ -157,7 +158,7 @@ func (f *feature) join(parts orb.MultiLineString) (orb.LineString, error) {
 		if straight(line[len(line)-2], end, next[1]) {
 			line = line[:len(line)-1]
 		}
-		line = append(line[:len(line):len(line)], next[1:]...)
+		line = append(line, next[1:]...)
 	}
 	return line, nil
 }

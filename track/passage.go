@@ -102,6 +102,12 @@ func checkSpeed(kn float64) error {
 // at a speed in knots. A ship at rest creeps a metre an hour.
 func Ahead(from Position, course unit.Angle, speedKn float64, t time.Time, length time.Duration) (*Passage, error) {
 	speedKn = math.Max(speedKn, 1/mileM)
+	if err := checkDeparture(t); err != nil {
+		return nil, err
+	}
+	if err := checkSpeed(speedKn); err != nil {
+		return nil, err
+	}
 	to := rhumbDirect(from, course, speedKn*length.Hours())
 	leg := NewLeg(Waypoint{Position: from}, Waypoint{Position: to}, Rhumb)
 	leg.Course = turn(course)
@@ -109,12 +115,6 @@ func Ahead(from Position, course unit.Angle, speedKn float64, t time.Time, lengt
 		if err := checkLatitude("position", p); err != nil {
 			return nil, err
 		}
-	}
-	if err := checkDeparture(t); err != nil {
-		return nil, err
-	}
-	if err := checkSpeed(speedKn); err != nil {
-		return nil, err
 	}
 	return &Passage{
 		Legs: []Leg{leg}, Departure: t.UTC(), Arrival: t.UTC().Add(length), SpeedKn: speedKn,

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"strconv"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -28,8 +29,8 @@ func (d *deltaTFlag) at(t time.Time) time.Duration {
 
 // Set, String and Type make it a flag's value.
 func (d *deltaTFlag) Set(text string) error {
-	var x float64
-	if _, err := fmt.Sscanf(text, "%g", &x); err != nil || math.IsNaN(x) || math.Abs(x) > 1000 {
+	x, err := strconv.ParseFloat(text, 64)
+	if err != nil || math.IsNaN(x) || math.Abs(x) > 1000 {
 		return fmt.Errorf("seconds, -1000 to 1000")
 	}
 	d.given = &x
