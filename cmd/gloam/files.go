@@ -20,8 +20,8 @@ type output struct {
 type staged struct{ temporary, path string }
 
 // writeAll writes all outputs or, where one cannot be written, none: each goes
-// to a temporary name beside its own, and all are renamed at the end. Devices
-// and pipes are written straight.
+// to a temporary name beside its own, then standard output, devices and pipes
+// are written straight, and the files are renamed at the end.
 func writeAll(outputs []output, stdout io.Writer) (err error) {
 	var ready []staged
 	defer func() {
@@ -41,14 +41,14 @@ func writeAll(outputs []output, stdout io.Writer) (err error) {
 		}
 		ready = append(ready, s)
 	}
-	for _, s := range ready {
-		if err := os.Rename(s.temporary, s.path); err != nil {
-			return cannotWrite(s.path, err)
-		}
-	}
 	for _, o := range direct {
 		if err := writeDirect(o, stdout); err != nil {
 			return cannotWrite(o.path, err)
+		}
+	}
+	for _, s := range ready {
+		if err := os.Rename(s.temporary, s.path); err != nil {
+			return cannotWrite(s.path, err)
 		}
 	}
 	return nil
