@@ -1,6 +1,7 @@
 package plan
 
 import (
+	"cmp"
 	"math"
 	"slices"
 	"time"
@@ -100,21 +101,33 @@ func (set *Settings) bestPair(bodies []Candidate) (best FixQuality, ok bool) {
 	return best, ok
 }
 
-// usable gives the part of a window in which at least three bodies can be
-// shot: from the third that comes to the third last that goes. ok is false
-// where there is none.
+// usable gives the longest part of a window in which at least three bodies can
+// be shot. ok is false where there is none.
 func usable(bodies []Candidate) (begin, end time.Time, ok bool) {
-	if len(bodies) < 3 {
-		return begin, end, false
+	type mark struct {
+		time time.Time
+		step int // how many bodies come or go
 	}
-	var from, to []time.Time
+	var marks []mark
 	for _, c := range bodies {
-		from, to = append(from, c.From), append(to, c.To)
+		marks = append(marks, mark{c.From, 1}, mark{c.To, -1})
 	}
-	slices.SortFunc(from, time.Time.Compare)
-	slices.SortFunc(to, time.Time.Compare)
-	begin, end = from[2], to[len(to)-3]
-	return begin, end, begin.Before(end)
+	slices.SortStableFunc(marks, func(a, b mark) int {
+		return cmp.Or(a.time.Compare(b.time), b.step-a.step)
+	})
+	up := 0
+	var from time.Time
+	for _, m := range marks {
+		before := up
+		up += m.step
+		if before < 3 && up >= 3 {
+			from = m.time
+		}
+		if before >= 3 && up < 3 && m.time.Sub(from) > end.Sub(begin) {
+			begin, end, ok = from, m.time, true
+		}
+	}
+	return begin, end, ok
 }
 
 // fill works out what can be shot in a window whose times are known.
