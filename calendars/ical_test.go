@@ -104,7 +104,7 @@ func voyage(tb testing.TB, name, waypoint, departure string) *plan.Plan {
 	if err != nil {
 		tb.Fatal(err)
 	}
-	passage, err := r.Sail(at, 6, track.Rhumb)
+	passage, err := r.Sail(track.Orders{Departure: at, SpeedKn: 6})
 	if err != nil {
 		tb.Fatal(err)
 	}

@@ -203,7 +203,7 @@ func TestVoyageWithoutWindow(t *testing.T) {
 	r := &track.Route{Name: "Polar day", Waypoints: []track.Waypoint{
 		{Position: track.PositionFromDeg(78, 10)}, {Position: track.PositionFromDeg(79, 8)},
 	}}
-	passage, err := r.Sail(time.Date(2027, 6, 20, 6, 0, 0, 0, time.UTC), 5, track.Rhumb)
+	passage, err := r.Sail(track.Orders{Departure: time.Date(2027, 6, 20, 6, 0, 0, 0, time.UTC), SpeedKn: 5})
 	if err != nil {
 		t.Fatal(err)
 	}

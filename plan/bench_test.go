@@ -24,7 +24,7 @@ func longPassage(tb testing.TB, days int) *track.Passage {
 			break
 		}
 	}
-	p, err := r.Sail(time.Date(2026, 11, 20, 12, 0, 0, 0, time.UTC), speed, track.Rhumb)
+	p, err := r.Sail(track.Orders{Departure: time.Date(2026, 11, 20, 12, 0, 0, 0, time.UTC), SpeedKn: speed})
 	if err != nil {
 		tb.Fatal(err)
 	}

@@ -23,7 +23,7 @@ func skies(tb testing.TB, n int) []Window {
 		r := &track.Route{Waypoints: []track.Waypoint{
 			{Position: track.PositionFromDeg(lat, lon)}, {Position: track.PositionFromDeg(lat+0.5, lon)},
 		}}
-		p, err := r.Sail(at, 30.0/24, track.Rhumb)
+		p, err := r.Sail(track.Orders{Departure: at, SpeedKn: 30.0 / 24})
 		if err != nil {
 			tb.Fatal(err)
 		}

@@ -14,7 +14,8 @@ import (
 // Day is one ship's day of the passage, or as much of it as the passage has.
 type Day struct {
 	track.Day
-	From, To time.Time // UTC: the part of the day that the passage has
+	Changes  []track.Change // what is done to clock and date
+	From, To time.Time      // UTC: the part of the day that the passage has
 	Events   []Event
 	Windows  []Window // those that begin on the day
 	Moon     MoonPhase
@@ -45,7 +46,7 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 		list = list[:n-1] // arrival at midnight begins no day
 	}
 	for i, d := range list {
-		day := Day{Day: d, From: laterOf(d.Begin, s.passage.Departure), To: s.passage.Arrival}
+		day := Day{Day: d, Changes: clock.Changes(d), From: laterOf(d.Begin, s.passage.Departure), To: s.passage.Arrival}
 		last := i+1 == len(list)
 		if !last {
 			day.To = list[i+1].Begin

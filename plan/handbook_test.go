@@ -18,13 +18,14 @@ func ship(tb testing.TB, lat, lon, course, knots float64, departure string, hour
 	north := knots * hours / 60 * math.Cos(course*math.Pi/180)
 	east := knots * hours / 60 * math.Sin(course*math.Pi/180) / math.Cos((lat+north/2)*math.Pi/180)
 	r := &track.Route{Waypoints: []track.Waypoint{{Position: from}, {Position: track.PositionFromDeg(lat+north, lon+east)}}}
-	p, err := r.Sail(track.Earliest, knots, track.Rhumb)
+	p, err := r.Sail(track.Orders{Departure: track.Earliest, SpeedKn: knots})
 	if err != nil {
 		tb.Fatal(err)
 	}
 	at := instant(tb, departure)
 	p.Arrival = at.Add(p.Arrival.Sub(p.Departure))
 	p.Departure = at
+	p.Legs[0].ETD, p.Legs[0].ETA = p.Departure, p.Arrival
 	return p
 }
 

@@ -46,10 +46,10 @@ func each[A, B any](list []A, f func(A) B) []B {
 
 func voyageJSON(p *track.Passage) jsonVoyage {
 	v := jsonVoyage{Name: p.Name, Departure: utc(p.Departure), Arrival: utc(p.Arrival), Distance: miles(p.DistanceNM)}
-	for i, l := range p.Legs {
+	for _, l := range p.Legs {
 		v.Legs = append(v.Legs, jsonLeg{
 			From: pointJSON(l.From), To: pointJSON(l.To), Sailing: l.Sailing.String(), Course: turn(l.Course),
-			Distance: miles(l.DistanceNM), Speed: brief(p.SpeedKn), ETD: utc(p.ETD(i)), ETA: utc(p.ETD(i + 1)),
+			Distance: miles(l.DistanceNM), Speed: brief(l.SpeedKn), ETD: utc(l.ETD), ETA: utc(l.ETA),
 		})
 	}
 	return v

@@ -25,7 +25,7 @@ func New(p *track.Passage, set Settings) (*Plan, error) {
 		return nil, err
 	}
 	s := newSky(p, set.DeltaT)
-	clock := track.NewClock(p)
+	clock := track.NewClock(p, set.ShipTime)
 	windows := s.windows(set)
 	nameWindows(windows, clock)
 	var group errgroup.Group

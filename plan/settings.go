@@ -8,6 +8,7 @@ import (
 	"github.com/soniakeys/unit"
 
 	"gloam/astro"
+	"gloam/track"
 )
 
 // Settings is what a plan depends on beside the passage. Start from
@@ -35,7 +36,8 @@ type Settings struct {
 	Loss    float64       // chance that a sight is lost, 0 to under 1
 	DRError float64       // standard error of the DR position, north and east, NM, above 0
 
-	DeltaT func(time.Time) time.Duration // TT - UT1
+	DeltaT   func(time.Time) time.Duration // TT - UT1
+	ShipTime track.ShipTime                // how the clock is kept; nil for nautical zones
 }
 
 // bestSun is the Sun's altitude at which a star window is best: stars out and

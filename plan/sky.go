@@ -23,7 +23,7 @@ func newSky(p *track.Passage, deltaT func(time.Time) time.Duration) *sky {
 	const margin = 24 * time.Hour
 	s := &sky{passage: p, sun: map[unit.Angle][]crossing{}, ephemeris: astro.NewEphemeris(p.Departure.Add(-margin), p.Arrival.Add(margin), deltaT)}
 	for i := range p.Legs {
-		s.bends = append(s.bends, legBend(&p.Legs[i], p.SpeedKn))
+		s.bends = append(s.bends, legBend(&p.Legs[i]))
 	}
 	return s
 }
@@ -60,7 +60,8 @@ func fixed(level unit.Angle) func(astro.Place) unit.Angle {
 func (s *sky) crossings(f func(time.Time) float64) []crossing {
 	var all []crossing
 	for i := range s.passage.Legs {
-		all = append(all, crossings(f, s.passage.ETD(i), s.passage.ETD(i+1), s.bends[i])...)
+		leg := &s.passage.Legs[i]
+		all = append(all, crossings(f, leg.ETD, leg.ETA, s.bends[i])...)
 	}
 	return all
 }
@@ -89,8 +90,8 @@ const (
 // axis), so the bound is (a + v)² + v² tan φ, where a is the body's rate, v
 // the rate at which the zenith turns, and v² tan φ the bend of a rhumb line at
 // latitude φ. A great circle has no such bend.
-func legBend(leg *track.Leg, speedKn float64) float64 {
-	v := speedKn * radianPerMile
+func legBend(leg *track.Leg) float64 {
+	v := leg.SpeedKn * radianPerMile
 	bend := (skyRate + v) * (skyRate + v)
 	if leg.Sailing == track.Rhumb {
 		bend += v * v * math.Max(math.Abs(leg.From.Lat.Tan()), math.Abs(leg.To.Lat.Tan()))

@@ -22,7 +22,7 @@ func TestSearchFindsWhatAScanSees(t *testing.T) {
 			r.Waypoints = append(r.Waypoints, track.Waypoint{Position: track.PositionFromDeg(lat(), 360*rng.Float64())})
 		}
 		start := time.Date(2026, 1, 1, 0, 0, 0, 0, time.UTC).Add(time.Duration(rng.IntN(4*365*24)) * time.Hour)
-		p, err := r.Sail(start, 20+80*rng.Float64(), track.Sailing(rng.IntN(2)))
+		p, err := r.Sail(track.Orders{Departure: start, SpeedKn: 20 + 80*rng.Float64(), Sailing: new(track.Sailing(rng.IntN(2)))})
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -51,7 +51,7 @@ func TestSearchFindsWhatAScanSees(t *testing.T) {
 				}
 				if (n%2 == 1) != changed {
 					t.Errorf("%v to %v at %.0f kn: %d crossings found between %v and %v, sign changed: %v",
-						p.Legs[0].From, p.Legs[0].To, p.SpeedKn, n, before, at, changed)
+						p.Legs[0].From, p.Legs[0].To, p.Legs[0].SpeedKn, n, before, at, changed)
 				}
 				last, before = now, at
 			}

@@ -9,7 +9,6 @@ import (
 	"unicode/utf8"
 
 	"gloam/astro"
-	"gloam/track"
 	"gloam/track/dm"
 )
 
@@ -24,11 +23,7 @@ func (p *Plan) WriteText(w io.Writer, bold bool) error {
 	t := &text{shipTime: p.Clock.At, bold: bold}
 	t.voyage(p)
 	for i := range p.Days {
-		change := ""
-		if i > 0 {
-			change = clockChange(p.Days[i-1].Day, p.Days[i].Day)
-		}
-		t.day(&p.Days[i], change)
+		t.day(&p.Days[i])
 	}
 	t.cautions()
 	_, err := w.Write(t.Bytes())
@@ -69,30 +64,13 @@ func (t *text) strong(s string) string {
 }
 
 func (t *text) voyage(pl *Plan) {
-	p := pl.Passage
-	name := p.Name
-	if name == "" {
-		name = "Voyage"
-	}
-	first, last := p.Legs[0].From, p.Legs[len(p.Legs)-1].To
-	t.line("%s", t.strong(name))
-	t.line("From      %s  %s", t.dateTimes(p.Departure), first.Label())
-	t.line("To        %s  %s", t.dateTimes(p.Arrival), last.Label())
-	t.line("Distance  %.1f NM at %.1f kn by %s: %s", p.DistanceNM, p.SpeedKn, p.Legs[0].Sailing, spanText(p.Arrival.Sub(p.Departure)))
+	t.head(pl.Passage)
 	t.sextant(&pl.Settings)
 	t.line("Sky       bodies from %s to %s high, Sun from %s to %s", wholeDegrees(pl.Settings.LowestAltitude),
 		wholeDegrees(pl.Settings.HighestAltitude), wholeDegrees(pl.Settings.UpperSun), wholeDegrees(pl.Settings.LowerSun))
 	t.line("")
-	t.line("Leg  Course    Miles  ETD (UTC)         To")
-	for i, l := range p.Legs {
-		t.line("%3d  %s  %7.1f  %s  %s", i+1, dm.Course(l.Course), l.DistanceNM, minuteOf(p.ETD(i)).Format("2006-01-02 15:04"), l.To.Label())
-	}
-	if p.Legs[0].Sailing == track.GreatCircle {
-		t.line("     Great-circle courses are initial ones.")
-	}
-	for _, n := range pl.Notes {
-		t.line("Note: %s", n)
-	}
+	t.legs(pl.Passage)
+	t.notes(pl.Notes)
 }
 
 func (t *text) sextant(set *Settings) {
@@ -114,10 +92,10 @@ func spanText(d time.Duration) string {
 	return fmt.Sprintf("%d d %d h", hours/24, hours%24)
 }
 
-func (t *text) day(d *Day, clockChange string) {
+func (t *text) day(d *Day) {
 	t.heading(strings.ToUpper(d.Date.Format("Monday 2 January 2006")), "ship's time "+ZoneText(d.Offset))
-	if clockChange != "" {
-		t.line("%s.", clockChange)
+	for _, c := range d.Changes {
+		t.line("%s.", changeText(c))
 	}
 	t.line("Moon %s.", d.Moon.Words())
 	if len(d.Events) > 0 {

@@ -121,7 +121,7 @@ func TestNotesArePrinted(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	passage, err := r.Sail(instant(t, "2027-01-01T00:00:00Z"), 5, track.Rhumb)
+	passage, err := r.Sail(track.Orders{Departure: instant(t, "2027-01-01T00:00:00Z"), SpeedKn: 5})
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -71,7 +71,7 @@ func readVoyages(t testing.TB) []voyage {
 		if err != nil {
 			t.Fatal(err)
 		}
-		p, err := route.Sail(instant(t, row[1]), number(t, row[2]), how)
+		p, err := route.Sail(track.Orders{Departure: instant(t, row[1]), SpeedKn: number(t, row[2]), Sailing: &how})
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -19,7 +19,7 @@ func hovering(tb testing.TB, lat, lon float64, departure string, days float64) *
 		{Position: track.PositionFromDeg(lat, lon)}, {Position: track.PositionFromDeg(lat+1.0/60, lon)},
 	}}
 	nm := track.NewLeg(r.Waypoints[0], r.Waypoints[1], track.Rhumb).DistanceNM
-	p, err := r.Sail(instant(tb, departure), nm/(days*24), track.Rhumb)
+	p, err := r.Sail(track.Orders{Departure: instant(tb, departure), SpeedKn: nm / (days * 24)})
 	if err != nil {
 		tb.Fatal(err)
 	}

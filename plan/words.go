@@ -4,8 +4,6 @@ import (
 	"fmt"
 	"strings"
 	"time"
-
-	"gloam/track"
 )
 
 // Words gives the kind in words: "evening stars".
@@ -16,30 +14,23 @@ func (k EventKind) Words() string { return strings.ReplaceAll(string(k), "-", " 
 
 // ZoneText writes the offset of ship's time both ways the trade does: what is
 // added to UTC to get ship's time, and the zone description, added to ship's
-// time to get UTC: "UTC-2 (ZD +2)".
+// time to get UTC: "UTC-2 (ZD +2)", "UTC+5:30 (ZD -5:30)".
 func ZoneText(offset time.Duration) string {
-	hours := int(offset / time.Hour)
-	if hours == 0 {
+	if offset == 0 {
 		return "UTC (ZD 0)"
 	}
-	return fmt.Sprintf("UTC%+d (ZD %+d)", hours, -hours)
+	return fmt.Sprintf("UTC%s (ZD %s)", signedHours(offset), signedHours(-offset))
 }
 
-// clockChange says what is done to clock and date between one ship's day and
-// the next, or nothing.
-func clockChange(before, now track.Day) string {
-	hours := int((now.Offset - before.Offset) / time.Hour)
-	switch dates := int(now.Date.Sub(before.Date) / (24 * time.Hour)); {
-	case dates < 1:
-		return "Date line crossed: the same date again"
-	case dates > 1:
-		return "Date line crossed: a date is skipped"
-	case hours > 0:
-		return fmt.Sprintf("Clock forward %d h at midnight", hours)
-	case hours < 0:
-		return fmt.Sprintf("Clock back %d h at midnight", -hours)
+func signedHours(d time.Duration) string {
+	sign := '+'
+	if d < 0 {
+		sign, d = '-', -d
 	}
-	return ""
+	if minutes := d % time.Hour / time.Minute; minutes > 0 {
+		return fmt.Sprintf("%c%d:%02d", sign, d/time.Hour, minutes)
+	}
+	return fmt.Sprintf("%c%d", sign, d/time.Hour)
 }
 
 // Words tells how much of the Moon is lit and whether it grows: "84 % lit,

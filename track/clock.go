@@ -1,123 +1,151 @@
 package track
 
 import (
-	"math"
 	"sort"
 	"time"
-
-	"github.com/soniakeys/unit"
 )
 
-// Clock is the clock a ship keeps on a passage by nautical zones: on each
-// ship's day the offset of the 15° band in which the ship lies at local mean
-// noon. The clock is shifted at midnight.
+// Clock is the clock a ship keeps on a passage.
 type Clock struct {
+	shifts  []Shift // in order; the first counts before its instant too
 	days    []Day
+	changes []Change
 	arrival time.Time
+}
+
+// Shift is an instant from which the ship's clock shows UTC plus an offset.
+type Shift struct {
+	At     time.Time
+	Offset time.Duration // ship's time less UTC
 }
 
 // Day is one ship's day. Across the date line a date is lived twice or
 // skipped; days that share a date differ in Begin.
 type Day struct {
 	Date   time.Time     // the ship's date, 00:00 UTC of that date
-	Offset time.Duration // ship's time less UTC
+	Offset time.Duration // ship's time less UTC as the day begins
 	Begin  time.Time     // UTC instant at which the day begins
-
-	// A clock put back at midnight shows the old date again until Begin.
-	shift time.Time     // UTC instant at which the clock is put to this day's time
-	early time.Duration // ship's time less UTC from shift to Begin
 }
 
-// ZoneOffset is ship's time less UTC in the 15° band of a longitude: whole
-// hours, -12 to 12. A longitude on the boundary, to 1e-9°, belongs to the band
-// farther from Greenwich; the 12th band is split by the sign of the longitude.
-func ZoneOffset(lon unit.Angle) time.Duration {
-	return time.Duration(math.Round(math.Round(lon.Deg()*1e9)/15e9)) * time.Hour
+// Change is what is done to clock and date at an instant. Done at midnight it
+// belongs to the day that begins, else to the day in which it falls.
+type Change struct {
+	At    time.Time     // UTC
+	From  time.Duration // ship's time less UTC until then
+	Clock time.Duration // forward, or back where below zero
+	Dates int           // date line: 1 for a date skipped, -1 for one lived again
 }
 
 const day = 24 * time.Hour
 
-// NewClock works out the ship's days of a passage, beginning with the day
-// before departure, which falls away unless the first shift is still to come.
-func NewClock(p *Passage) *Clock {
-	zone := ZoneOffset(p.At(p.Departure).Lon)
-	d := Day{Date: p.Departure.Add(zone).Truncate(day).Add(-day), Offset: zone}
-	c := &Clock{arrival: p.Arrival}
-	for !d.shift.After(p.Arrival) {
-		if !d.Begin.After(p.Departure) {
-			c.days = c.days[:0]
-		}
-		c.days = append(c.days, d)
-		d = d.next(p)
+// NewClock works out the ship's days of a passage by a rule; nil stands for
+// [NauticalTime].
+func NewClock(p *Passage, rule ShipTime) *Clock {
+	if rule == nil {
+		rule = NauticalTime
 	}
-	first := &c.days[0] // no clock was shifted the night before
+	c := &Clock{shifts: rule(p), arrival: p.Arrival}
+	first := Day{Offset: c.offset(p.Departure)}
+	first.Date = dateOf(p.Departure, first.Offset)
 	first.Begin = first.Date.Add(-first.Offset)
-	first.shift, first.early = first.Begin, first.Offset
+	c.days = []Day{first}
+	for i := range c.shifts {
+		c.addShift(i, p.Departure)
+	}
 	return c
 }
 
-// next is the ship's day after d. At midnight the clock goes forward into the
-// new day, or back and lives the last hours of the old date once more; the
-// date line changes only the date.
-func (d Day) next(p *Passage) Day {
-	midnight := d.Date.Add(day - d.Offset)
-	noon := p.localNoon(midnight.Add(day / 2))
-	n := Day{Offset: ZoneOffset(p.At(noon).Lon), Begin: midnight, shift: midnight}
-	ahead := n.Offset - d.Offset
-	if ahead > day/2 {
-		ahead -= day
-	} else if ahead < -day/2 {
-		ahead += day
+// addShift adds the change that a shift brings and the days that begin before
+// the next.
+func (c *Clock) addShift(i int, departure time.Time) {
+	s, end := c.shifts[i], c.arrival
+	if i+1 < len(c.shifts) {
+		end = earlier(end, c.shifts[i+1].At.Add(-1))
 	}
-	n.early = d.Offset + ahead
-	if ahead < 0 {
-		n.Begin = midnight.Add(-ahead)
+	if s.At.After(departure) {
+		c.change(s, c.shifts[i-1].Offset)
 	}
-	n.Date = n.Begin.Add(n.Offset).Truncate(day)
-	return n
+	from := later(s.At, departure)
+	for m := dateOf(from, s.Offset).Add(day - s.Offset); !m.After(end); m = m.Add(day) {
+		if date := dateOf(m, s.Offset); date.After(c.last().Date) {
+			c.days = append(c.days, Day{date, s.Offset, m})
+		}
+	}
 }
 
-// localNoon is the instant within six hours of guess at which local mean time
-// on board is 12:00. Noons step by a day and shift with the ship's longitude;
-// the bound of six hours holds close to a pole, where longitude runs wild.
-func (p *Passage) localNoon(guess time.Time) time.Time {
-	noon := guess
-	for range 5 {
-		lmt := noon.Add(hoursToDuration(p.At(noon).Lon.Deg() / 15))
-		noon = noon.Add(day/2 - lmt.Sub(lmt.Truncate(day)))
+// change notes a shift from an offset before it, and the day that begins with
+// it: where the date steps on, or is lived again beyond the date line.
+func (c *Clock) change(s Shift, before time.Duration) {
+	step := s.Offset - before
+	dates := 0
+	for ; step > day/2; step -= day {
+		dates++
 	}
-	return earlier(later(noon, guess.Add(-day/4)), guess.Add(day/4))
+	for ; step <= -day/2; step += day {
+		dates--
+	}
+	if s.At.After(c.arrival) {
+		return
+	}
+	c.changes = append(c.changes, Change{s.At, before, step, dates})
+	if date := dateOf(s.At, s.Offset); dates < 0 || date.After(c.last().Date) {
+		c.days = append(c.days, Day{date, s.Offset, s.At})
+	}
+}
+
+func (c *Clock) last() Day { return c.days[len(c.days)-1] }
+
+// dateOf is the date that a clock of some offset shows, as 00:00 UTC.
+func dateOf(t time.Time, offset time.Duration) time.Time {
+	return t.UTC().Add(offset).Truncate(day)
 }
 
 // Day gives the ship's day of an instant; before the first day the first,
 // after the last the last.
 func (c *Clock) Day(t time.Time) Day {
-	return c.days[c.index(t, func(d Day) time.Time { return d.Begin })]
+	i := sort.Search(len(c.days), func(i int) bool { return c.days[i].Begin.After(t) })
+	return c.days[max(i-1, 0)]
 }
 
 // Days gives all ship's days of the passage in order: each lasts until the
 // next begins.
-func (c *Clock) Days() []Day {
-	return c.days[:c.index(c.arrival, func(d Day) time.Time { return d.Begin })+1]
+func (c *Clock) Days() []Day { return c.days }
+
+// Changes gives what is done to the clock for a day.
+func (c *Clock) Changes(d Day) (all []Change) {
+	for _, x := range c.changes {
+		at := x.At
+		if x.AtMidnight() { // the day may begin an hour later, the clock put back
+			i := sort.Search(len(c.days), func(i int) bool { return !c.days[i].Begin.Before(at) })
+			if i == len(c.days) {
+				continue
+			}
+			at = c.days[i].Begin
+		}
+		if c.Day(at) == d {
+			all = append(all, x)
+		}
+	}
+	return all
 }
+
+// Offset is ship's time less UTC after the change.
+func (x Change) Offset() time.Duration { return x.From + x.Clock + day*time.Duration(x.Dates) }
+
+// AtMidnight tells whether the clock showed midnight before the change.
+func (x Change) AtMidnight() bool { return x.At.Add(x.From).Truncate(day).Equal(x.At.Add(x.From)) }
 
 // At gives an instant as the ship's clock shows it; its date is that of
 // [Clock.Day]. Where the clock is put back at the date line, bound west, the
 // last hour of the old date has the new day's time on the old date: the offset
-// is then as low as -13 h for a ship that crosses two zones at once.
+// is then -13 h.
 func (c *Clock) At(t time.Time) time.Time {
-	d := c.days[c.index(t, func(d Day) time.Time { return d.shift })]
-	offset := d.Offset
-	if t.Before(d.Begin) && !t.Before(d.shift) {
-		offset = d.early
-	}
-	return t.In(time.FixedZone("", int(offset.Seconds())))
+	return t.In(time.FixedZone("", int(c.offset(t).Seconds())))
 }
 
-// index finds the last day whose mark is not after t.
-func (c *Clock) index(t time.Time, mark func(Day) time.Time) int {
-	i := sort.Search(len(c.days), func(i int) bool { return mark(c.days[i]).After(t) })
-	return max(i-1, 0)
+func (c *Clock) offset(t time.Time) time.Duration {
+	i := sort.Search(len(c.shifts), func(i int) bool { return c.shifts[i].At.After(t) })
+	return c.shifts[max(i-1, 0)].Offset
 }
 
 func later(a, b time.Time) time.Time {

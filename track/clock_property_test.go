@@ -81,7 +81,7 @@ func drawVoyage(t *rapid.T, lat, slowest, fastest float64) *Passage {
 	}
 	departure := noon.Add(time.Duration(rapid.IntRange(0, 3000).Draw(t, "minutes")) * time.Minute)
 	how := rapid.SampledFrom([]Sailing{Rhumb, GreatCircle}).Draw(t, "sailing")
-	p, err := r.Sail(departure, rapid.Float64Range(slowest, fastest).Draw(t, "speed"), how)
+	p, err := r.Sail(Orders{Departure: departure, SpeedKn: rapid.Float64Range(slowest, fastest).Draw(t, "speed"), Sailing: &how})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -93,7 +93,7 @@ func drawVoyage(t *rapid.T, lat, slowest, fastest float64) *Passage {
 func TestClockShowsTheDate(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		p := drawVoyage(t, 89.9, 8, MaxSpeedKn)
-		if fault := clockFault(p, NewClock(p)); fault != "" {
+		if fault := clockFault(p, NewClock(p, nil)); fault != "" {
 			t.Error(fault)
 		}
 	})
@@ -105,7 +105,7 @@ func TestClockShowsTheDate(t *testing.T) {
 func TestClockKeepsNoon(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		p := drawVoyage(t, 45, 8, 16)
-		c := NewClock(p)
+		c := NewClock(p, nil)
 		if fault := noonFault(p, c); fault != "" {
 			t.Error(fault)
 		}

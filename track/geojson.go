@@ -22,10 +22,14 @@ const waypointNM = 0.1
 // Feature or a bare geometry holding one LineString, or one MultiLineString
 // cut at the antimeridian (section 3.1.9), whose parts are joined again.
 //
-// Points with a name, within 0.1 NM of a vertex, name that waypoint. The
-// line's properties name, departure (RFC 3339), speed_kn, sailing and eye_m
-// fill the Route. Heights, foreign members, null geometries and other kinds
-// of geometry are passed over. Errors are of type *[Error].
+// Points with a name, within 0.1 NM of a vertex, name that waypoint; their
+// property stay_h is a stay there, in hours. The line's properties name,
+// departure and arrival (RFC 3339), speed_kn, sailing and eye_m fill the Route.
+// speed_kn and sailing may be lists with a value or null for each leg,
+// coordTimes is one with the time at each vertex or null; in a MultiLineString
+// they are lists of such lists. Heights, foreign members, null geometries and
+// other kinds of geometry are passed over. Errors are of type *[Error], but
+// for those of r.
 func ReadGeoJSON(r io.Reader) (*Route, error) {
 	data, err := io.ReadAll(io.LimitReader(r, MaxRouteBytes+1))
 	if err != nil {
@@ -190,11 +194,8 @@ func buildRoute(features []feature) (*Route, error) {
 	if line == nil {
 		return nil, &Error{"file", "no line", "one LineString, the route", "draw the route as a line and export it again"}
 	}
-	vertices, err := line.vertices()
+	vertices, err := line.waypoints(points)
 	if err != nil {
-		return nil, err
-	}
-	if err := nameVertices(vertices, points); err != nil {
 		return nil, err
 	}
 	r, err := newRoute(vertices)

@@ -72,14 +72,14 @@ func checkRoute(t *testing.T, r *Route) {
 // checkSailed sails the route at its own speed and time, or at invented ones.
 func checkSailed(t *testing.T, r *Route, s Sailing) {
 	t.Helper()
-	speed, departure := r.SpeedKn, r.Departure
-	if speed == 0 {
-		speed = 12
+	o := Orders{Sailing: &s}
+	if r.SpeedKn == 0 {
+		o.SpeedKn = 12
 	}
-	if departure.IsZero() {
-		departure = time.Date(2026, 11, 20, 12, 0, 0, 0, time.UTC)
+	if !r.Waypoints[0].timed() {
+		o.Departure = time.Date(2026, 11, 20, 12, 0, 0, 0, time.UTC)
 	}
-	p, err := r.Sail(departure, speed, s)
+	p, err := r.Sail(o)
 	if err != nil {
 		wantPlainError(t, err)
 		return

@@ -109,8 +109,8 @@ func TestReadGeoJSONProperties(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if want := time.Date(2026, 11, 20, 10, 0, 0, 0, time.UTC); !r.Departure.Equal(want) {
-		t.Errorf("departure %v, want %v", r.Departure, want)
+	if want := time.Date(2026, 11, 20, 10, 0, 0, 0, time.UTC); !r.Waypoints[0].ETD.Equal(want) {
+		t.Errorf("departure %v, want %v", r.Waypoints[0].ETD, want)
 	}
 	if r.Name != "Azores run" || r.SpeedKn != 12.5 || r.EyeM != 9 || r.Sailing == nil || *r.Sailing != GreatCircle {
 		t.Errorf("got %+v", r)
@@ -122,7 +122,7 @@ func TestReadGeoJSONProperties(t *testing.T) {
 			t.Errorf("%s: %v", props, err)
 			continue
 		}
-		if r.Name != "" || r.SpeedKn != 0 || r.EyeM != 0 || r.Sailing != nil || !r.Departure.IsZero() {
+		if r.Name != "" || r.SpeedKn != 0 || r.EyeM != 0 || r.Sailing != nil || !r.Waypoints[0].ETD.IsZero() {
 			t.Errorf("%s: got %+v, want all unset", props, r)
 		}
 	}

@@ -3,6 +3,7 @@ package track
 import (
 	"fmt"
 	"math"
+	"time"
 
 	"github.com/soniakeys/unit"
 	"github.com/tidwall/geodesic"
@@ -41,7 +42,18 @@ type Leg struct {
 	Sailing    Sailing
 	Course     unit.Angle // true course at From, [0°, 360°)
 	DistanceNM float64
+	SpeedKn    float64       // these three are set by [Route.Sail]
+	ETD, ETA   time.Time     // UTC
 	line       geodesic.Line // great circle only
+}
+
+// Stays tells whether the ship lies still on the leg.
+func (l *Leg) Stays() bool { return l.SpeedKn == 0 }
+
+// lasts is how long the leg takes at its speed; longer than any passage may
+// last it counts as 800 days.
+func (l *Leg) lasts() time.Duration {
+	return hoursToDuration(math.Min(l.DistanceNM/l.SpeedKn, 2*MaxDuration.Hours()))
 }
 
 // NewLeg works out course and distance from one waypoint to the next, the

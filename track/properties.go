@@ -2,6 +2,7 @@ package track
 
 import (
 	"encoding/json"
+	"fmt"
 	"strings"
 	"time"
 	"unicode"
@@ -9,70 +10,96 @@ import (
 	"github.com/paulmach/orb"
 )
 
-// nameVertices gives each vertex the name of the first Point that lies on it.
-func nameVertices(vertices []Waypoint, points []feature) error {
-	for _, f := range points {
-		name, err := f.name()
-		if err != nil {
-			return err
-		}
-		if name == "" {
-			continue
-		}
-		p := f.geometry.(orb.Point)
-		place := PositionFromDeg(p.Lat(), p.Lon())
-		for i := range vertices {
-			if vertices[i].Name == "" && near(vertices[i].Position, place, waypointNM) {
-				vertices[i].Name = name
-			}
-		}
+// call is what a Point says of the waypoint on which it lies: property stay_h
+// is the time the ship stays there, in hours.
+func (f *feature) call() (w Waypoint, err error) {
+	p := f.geometry.(orb.Point)
+	w.Position = PositionFromDeg(p.Lat(), p.Lon())
+	if w.Name, err = f.name(); err != nil {
+		return w, err
 	}
-	return nil
+	hours, err := f.number("stay_h")
+	if hours > MaxDuration.Hours() {
+		return w, f.bad("stay_h", fmt.Sprintf("at most %.0f hours", MaxDuration.Hours()))
+	}
+	w.Stay = hoursToDuration(hours)
+	return w, err
 }
 
-// fill copies the line's properties into the route.
+// fill copies the line's properties into the route. Those that are lists are
+// the legs' own: see readTimings.
 func (f *feature) fill(r *Route) (err error) {
 	if r.Name, err = f.name(); err != nil {
 		return err
 	}
-	departure, err := f.text("departure")
-	if err != nil {
+	first, last := &r.Waypoints[0], &r.Waypoints[len(r.Waypoints)-1]
+	if err := f.time("departure", &first.ETD); err != nil {
 		return err
 	}
-	if departure != "" {
-		if r.Departure, err = time.Parse(time.RFC3339, departure); err != nil {
-			return f.bad("departure", "RFC 3339 with a zone, as 2026-11-20T12:00:00Z")
-		}
-	}
-	if r.SpeedKn, err = f.number("speed_kn"); err != nil {
+	if err := f.time("arrival", &last.ETA); err != nil {
 		return err
 	}
 	if r.EyeM, err = f.number("eye_m"); err != nil {
 		return err
 	}
-	sailing, err := f.text("sailing")
-	if err != nil || sailing == "" {
+	if !f.lists("speed_kn") {
+		if r.SpeedKn, err = f.number("speed_kn"); err != nil {
+			return err
+		}
+	}
+	if !f.lists("sailing") {
+		r.Sailing, err = f.sailing()
+	}
+	return err
+}
+
+// time reads a property that is a time, if it is there.
+func (f *feature) time(key string, into *time.Time) error {
+	text, err := f.text(key)
+	if err != nil || text == "" {
 		return err
 	}
-	s, err := ParseSailing(sailing)
+	t, err := time.Parse(time.RFC3339, text)
 	if err != nil {
-		return f.bad("sailing", "rhumb or great-circle")
+		return f.bad(key, "RFC 3339 with a zone, as 2026-11-20T12:00:00Z")
 	}
-	r.Sailing = &s
+	if at := t.UTC(); into.IsZero() {
+		*into = at
+	} else if !into.Equal(at) {
+		return &Error{f.place + " property " + key, fmt.Sprintf("%s, where coordTimes has %s", timeText(at), timeText(*into)),
+			"one time", "take one of the two out"}
+	}
 	return nil
 }
 
-// name is the property name, fit to be printed: control characters and line
-// breaks become blanks.
+func (f *feature) sailing() (*Sailing, error) {
+	name, err := f.text("sailing")
+	if err != nil || name == "" {
+		return nil, err
+	}
+	s, err := ParseSailing(name)
+	if err != nil {
+		return nil, f.bad("sailing", "rhumb or great-circle")
+	}
+	return &s, nil
+}
+
+// name is the property name, fit to be printed.
 func (f *feature) name() (string, error) {
 	name, err := f.text("name")
+	return printable(name), err
+}
+
+// printable is a text on one line: control characters and line breaks become
+// blanks, and of blanks one is kept.
+func printable(s string) string {
 	blank := func(r rune) rune {
 		if unicode.IsControl(r) || unicode.In(r, unicode.Zl, unicode.Zp, unicode.Cf) {
 			return ' '
 		}
 		return r
 	}
-	return strings.Join(strings.Fields(strings.Map(blank, name)), " "), err
+	return strings.Join(strings.Fields(strings.Map(blank, s)), " ")
 }
 
 func (f *feature) text(key string) (string, error) {
@@ -104,7 +131,7 @@ func (f *feature) bad(key, allowed string) error {
 
 // shorten keeps a value met in a file fit for one line of an error.
 func shorten(s string) string {
-	s = strings.Join(strings.Fields(s), " ")
+	s = printable(s)
 	if r := []rune(s); len(r) > 60 {
 		return string(r[:60]) + "..."
 	}

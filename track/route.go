@@ -3,7 +3,6 @@ package track
 import (
 	"fmt"
 	"math"
-	"time"
 
 	"github.com/soniakeys/unit"
 )
@@ -19,6 +18,7 @@ const repeatNM = 1 / mileM
 type Waypoint struct {
 	Name string
 	Position
+	Timing
 }
 
 // Label names the waypoint, or gives its position where it has no name.
@@ -29,12 +29,12 @@ func (w Waypoint) Label() string {
 	return w.Position.String()
 }
 
-// Route is a line to sail and what its file says of how. Departure, SpeedKn
-// and EyeM are zero and Sailing is nil where the file is silent.
+// Route is a line to sail and what its file says of how. SpeedKn and Sailing
+// are for the legs whose waypoints say nothing; they and EyeM are zero where
+// the file is silent.
 type Route struct {
 	Name      string
 	Waypoints []Waypoint // two or more, neighbours differ
-	Departure time.Time
 	SpeedKn   float64
 	Sailing   *Sailing
 	EyeM      float64
@@ -50,9 +50,7 @@ func newRoute(vertices []Waypoint) (*Route, error) {
 		}
 		if n := len(r.Waypoints); n > 0 && near(r.Waypoints[n-1].Position, w.Position, repeatNM) {
 			r.Notes = append(r.Notes, fmt.Sprintf("%s repeats the one before it and is skipped", vertexPlace(i)))
-			if r.Waypoints[n-1].Name == "" {
-				r.Waypoints[n-1].Name = w.Name
-			}
+			r.Waypoints[n-1].absorb(&w)
 			continue
 		}
 		r.Waypoints = append(r.Waypoints, w)

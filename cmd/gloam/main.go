@@ -6,6 +6,7 @@ import (
 	"io"
 	"os"
 	"time"
+	_ "time/tzdata" // names of zones for --ship-time, on any machine
 
 	"github.com/spf13/cobra"
 

@@ -22,10 +22,9 @@ import (
 // planFlags are what the command line says of a plan.
 type planFlags struct {
 	settingsFlags
-	depart, sailing string
-	speed           float64
-	alarm           time.Duration
-	ics, json       string
+	voyageFlags
+	alarm     time.Duration
+	ics, json string
 }
 
 func newPlan(w world) *cobra.Command {
@@ -53,14 +52,11 @@ func newPlan(w world) *cobra.Command {
 func (f *planFlags) define(cmd *cobra.Command) {
 	flags := cmd.Flags()
 	flags.SortFlags = false
-	flags.StringVar(&f.depart, "depart", "", "departure, UTC or with a zone: 2026-11-20T12:00Z")
-	flags.Float64Var(&f.speed, "speed", 0, "speed made good, knots")
-	flags.StringVar(&f.sailing, "sailing", "rhumb", "rhumb or great-circle")
+	f.voyageFlags.define(cmd)
 	flags.DurationVar(&f.alarm, "alarm", 20*time.Minute, "calendar alarm before each window; 0 for none")
 	flags.StringVar(&f.ics, "ics", "", "write the calendar to this file (- for standard output, alone)")
 	flags.StringVar(&f.json, "json", "", "write the plan as JSON to this file (- for standard output, alone)")
 	f.settingsFlags.define(cmd)
-	_ = cmd.RegisterFlagCompletionFunc("sailing", cobra.FixedCompletions([]string{"rhumb", "great-circle"}, cobra.ShellCompDirectiveNoFileComp))
 }
 
 // run makes the plan, then writes the files, then prints the text.
@@ -85,6 +81,25 @@ func (f *planFlags) run(file string, w world) error {
 		return err
 	}
 	return writeAll(outputs, w.out)
+}
+
+// plan joins flags and file; flags win.
+func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
+	passage, rule, err := f.sail(file, r)
+	if err != nil {
+		return nil, err
+	}
+	set, err := f.settings(r.EyeM)
+	if err != nil {
+		return nil, err
+	}
+	set.ShipTime = rule
+	p, err := plan.New(passage, set)
+	if err != nil {
+		return nil, hinted{err, settingHint}
+	}
+	p.Notes = r.Notes
+	return p, nil
 }
 
 // check refuses outputs that would overwrite each other or the route.
