@@ -80,15 +80,22 @@ func (t *text) sextant(set *Settings) {
 
 // dateTimes gives an instant in UTC and by the ship's clock.
 func (t *text) dateTimes(at time.Time) string {
-	at = minuteOf(at)
+	at = t.minute(at)
 	return fmt.Sprintf("%s UTC, %s ship", at.UTC().Format("2006-01-02 15:04"), t.shipTime(at).Format("01-02 15:04"))
 }
 
 func minuteOf(t time.Time) time.Time { return t.Round(time.Minute).UTC() }
 
-// spanText writes a duration in days and hours: "14 d 22 h".
+// spanText writes a duration in days and hours: "14 d 22 h"; a short one in
+// hours or minutes alone.
 func spanText(d time.Duration) string {
 	hours := int(d.Round(time.Hour).Hours())
+	switch {
+	case d < time.Hour:
+		return fmt.Sprintf("%d min", int(d.Round(time.Minute).Minutes()))
+	case hours < 24:
+		return fmt.Sprintf("%d h", hours)
+	}
 	return fmt.Sprintf("%d d %d h", hours/24, hours%24)
 }
 
@@ -103,7 +110,7 @@ func (t *text) day(d *Day) {
 		t.line(" ship   UTC on     event             DR position")
 	}
 	for _, e := range d.Events {
-		t.line("%s  %s  %-16s  %v", t.ship(e.Time), utcText(e.Time), e.Kind.Words(), e.Position)
+		t.line("%s  %s  %-16s  %v", t.ship(e.Time), t.minute(e.Time).Format("15:04 on 02"), e.Kind.Words(), e.Position)
 	}
 	for i := range d.Windows {
 		t.window(&d.Windows[i])
@@ -113,7 +120,15 @@ func (t *text) day(d *Day) {
 	}
 }
 
-func (t *text) clock(at time.Time) time.Time { return t.shipTime(minuteOf(at)) }
+// minute rounds an instant, but not over into another ship's date.
+func (t *text) minute(at time.Time) time.Time {
+	if r := minuteOf(at); t.shipTime(r).Day() == t.shipTime(at).Day() {
+		return r
+	}
+	return at.Truncate(time.Minute).UTC()
+}
+
+func (t *text) clock(at time.Time) time.Time { return t.shipTime(t.minute(at)) }
 func (t *text) ship(at time.Time) string     { return t.clock(at).Format("15:04") }
 
 // fromTo writes a span within a day, or over midnight: "22:40 to 01:24 on 17".
@@ -123,9 +138,6 @@ func fromTo(a, b time.Time) string {
 	}
 	return a.Format("15:04") + b.Format(" to 15:04 on 02")
 }
-
-// utcText gives time and day of the month in UTC: "18:32 on 20".
-func utcText(at time.Time) string { return minuteOf(at).Format("15:04 on 02") }
 
 func (t *text) noWindow(d *Day) {
 	t.line("")
@@ -139,16 +151,20 @@ func (t *text) noWindow(d *Day) {
 			note = "; never sweep the telescope near the Sun"
 		}
 		t.line("To shoot: %-6s %s high at %s ship, %s UTC%s", r.Body, dm.Altitude(r.Altitude),
-			t.ship(r.Highest), minuteOf(r.Highest).Format("15:04"), note)
+			t.ship(r.Highest), t.minute(r.Highest).Format("15:04"), note)
 	}
 }
 
 func (t *text) window(w *Window) {
 	t.line("")
 	t.line("%s  %s ship, %s UTC", t.strong(strings.ToUpper(w.Kind.Words())),
-		fromTo(t.clock(w.Begin), t.clock(w.End)), fromTo(minuteOf(w.Begin), minuteOf(w.End)))
-	t.line("Best at %s ship, %s UTC.  DR %v", t.ship(w.Best), minuteOf(w.Best).Format("15:04"), w.Fix.Position)
-	t.line("Course %s, %.1f kn.", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
+		fromTo(t.clock(w.Begin), t.clock(w.End)), fromTo(t.minute(w.Begin), t.minute(w.End)))
+	t.line("Best at %s ship, %s UTC.  DR %v", t.ship(w.Best), t.minute(w.Best).Format("15:04"), w.Fix.Position)
+	if w.Fix.SpeedKn == 0 {
+		t.line("Lying still; bearings from the bow are for her heading as she came, %s.", dm.Bearing(w.Fix.Course))
+	} else {
+		t.line("Course %s, %.1f kn.", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
+	}
 	if !w.Usable[0].IsZero() {
 		t.line("Three bodies and more over a usable horizon from %s to %s ship.", t.ship(w.Usable[0]), t.ship(w.Usable[1]))
 	}

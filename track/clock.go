@@ -38,6 +38,10 @@ type Change struct {
 
 const day = 24 * time.Hour
 
+// dateLineShift is how far the hands may be shifted on the night of the date
+// line.
+const dateLineShift = 3 * time.Hour
+
 // NewClock works out the ship's days of a passage by a rule; nil stands for
 // [NauticalTime].
 func NewClock(p *Passage, rule ShipTime) *Clock {
@@ -76,13 +80,11 @@ func (c *Clock) addShift(i int, departure time.Time) {
 // change notes a shift from an offset before it, and the day that begins with
 // it: where the date steps on, or is lived again beyond the date line.
 func (c *Clock) change(s Shift, before time.Duration) {
-	step := s.Offset - before
-	dates := 0
-	for ; step > day/2; step -= day {
-		dates++
-	}
-	for ; step <= -day/2; step += day {
-		dates--
+	step, dates := s.Offset-before, 0
+	for sign := time.Duration(-1); sign <= 1; sign += 2 { // a day, give or take a shift of the hands, is the date line's
+		if rest := step - sign*day; rest.Abs() <= dateLineShift {
+			step, dates = rest, int(sign)
+		}
 	}
 	if s.At.After(c.arrival) {
 		return

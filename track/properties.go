@@ -18,6 +18,9 @@ func (f *feature) call() (w Waypoint, err error) {
 	if w.Name, err = f.name(); err != nil {
 		return w, err
 	}
+	if string(f.properties["stay_h"]) == "0" {
+		return w, nil
+	}
 	hours, err := f.number("stay_h")
 	if hours > MaxDuration.Hours() {
 		return w, f.bad("stay_h", fmt.Sprintf("at most %.0f hours", MaxDuration.Hours()))

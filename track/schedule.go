@@ -198,8 +198,10 @@ func (s *schedule) fit(from, to int, left time.Time) error {
 			return kn
 		})
 		return nil
+	case free > 0 && rest > 0:
+		return s.refuse(to, fmt.Sprintf("%.1f NM left for %.2g h", free, rest.Hours()), fmt.Sprintf("at most %v kn", MaxSpeedKn))
 	case free > 0:
-		return s.refuse(to, fmt.Sprintf("%.1f NM without a speed in %.4g h", free, rest.Hours()), fmt.Sprintf("at most %v kn", MaxSpeedKn))
+		return s.refuse(to, fmt.Sprintf("reached %s by its time, not before %s by the speeds and stays", timeText(due), timeText(left.Add(given))), "the two to agree")
 	}
 	return s.agree(from, to, left, left.Add(given), due)
 }

@@ -109,7 +109,9 @@ func (p *Passage) until(t time.Time) []Leg {
 
 // after is what an instant leaves of a leg; before, what it had.
 func (l Leg) after(t time.Time) Leg {
-	t = later(t, l.ETD)
+	if !t.After(l.ETD) {
+		return l
+	}
 	if l.Stays() {
 		l.ETD = t
 		return l

@@ -63,6 +63,6 @@ func newRoot(w world) *cobra.Command {
 	root.SetOut(w.out)
 	root.SetErr(w.err)
 	root.SetFlagErrorFunc(func(_ *cobra.Command, err error) error { return usage(err) })
-	root.AddCommand(newPlan(w), newSky(w), newAlmanac(w))
+	root.AddCommand(newPlan(w), newRoute(w), newSky(w), newAlmanac(w))
 	return root
 }

@@ -41,9 +41,7 @@ func newPlan(w world) *cobra.Command {
 		RunE: func(cmd *cobra.Command, args []string) error {
 			return f.run(args[0], w)
 		},
-		ValidArgsFunction: func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
-			return []string{"geojson", "json"}, cobra.ShellCompDirectiveFilterFileExt
-		},
+		ValidArgsFunction: routeFiles,
 	}
 	f.define(cmd)
 	return cmd

@@ -39,6 +39,11 @@ func (f *voyageFlags) define(cmd *cobra.Command) {
 	_ = cmd.RegisterFlagCompletionFunc("ship-time", cobra.FixedCompletions([]string{"auto", "utc"}, cobra.ShellCompDirectiveNoFileComp))
 }
 
+// routeFiles completes names of route files.
+func routeFiles(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
+	return []string{"geojson", "json", "gpx", "rtz"}, cobra.ShellCompDirectiveFilterFileExt
+}
+
 func readRoute(file string, stdin io.Reader) (*track.Route, error) {
 	in := stdin
 	if file != "-" {
