@@ -10,7 +10,7 @@ import (
 )
 
 // On passages of all sorts, to 100 knots and to 89.8° of latitude, over a pole
-// too, every change of sign that a scan in steps of 20 s sees is found, in its
+// too, and with a stay before departure, every change of sign that a scan in steps of 20 s sees is found, in its
 // step; what the search finds beyond are pairs between two steps.
 func TestSearchFindsWhatAScanSees(t *testing.T) {
 	rng := rand.New(rand.NewPCG(21, 22))
@@ -21,11 +21,13 @@ func TestSearchFindsWhatAScanSees(t *testing.T) {
 		for range 2 {
 			r.Waypoints = append(r.Waypoints, track.Waypoint{Position: track.PositionFromDeg(lat(), 360*rng.Float64())})
 		}
+		r.Waypoints[0].Stay = time.Duration(rng.IntN(12)) * time.Hour
 		start := time.Date(2026, 1, 1, 0, 0, 0, 0, time.UTC).Add(time.Duration(rng.IntN(4*365*24)) * time.Hour)
 		p, err := r.Sail(track.Orders{Departure: start, SpeedKn: 20 + 80*rng.Float64(), Sailing: new(track.Sailing(rng.IntN(2)))})
 		if err != nil {
 			t.Fatal(err)
 		}
+		start = p.Departure
 		p.Arrival = earlierOf(p.Arrival, start.Add(36*time.Hour))
 		s := newSky(p, astro.DeltaT)
 		functions := []func(time.Time) float64{s.above(astro.Moon, moonriseAltitude), s.transit}
