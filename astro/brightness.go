@@ -77,7 +77,9 @@ type Light struct {
 // distance is the angle between the light and a direction, at least 0.25°, in
 // degrees.
 func (l Light) distance(h, zn unit.Angle) float64 {
-	return math.Max(spherical(l.Azimuth.Rad(), l.Altitude.Rad()).angle(spherical(zn.Rad(), h.Rad()))/degree, 0.25)
+	sinL, cosL := l.Altitude.Sincos()
+	sinH, cosH := h.Sincos()
+	return math.Max(math.Acos(math.Min(sinL*sinH+cosL*cosH*(l.Azimuth-zn).Cos(), 1))/degree, 0.25)
 }
 
 // scatter is how strongly air throws light sideways at a distance in degrees

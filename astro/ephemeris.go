@@ -78,7 +78,7 @@ func (e *Ephemeris) lightMoon() {
 	for i := range e.bodies[Moon].rows {
 		t := e.bodies[Moon].start.Add(time.Duration(i) * e.bodies[Moon].step)
 		row := &e.bodies[Moon].rows[i]
-		p := e.place(*row, t).litBy(e.Place(Sun, t))
+		p := e.place(*row, e.sidereal(t)).litBy(e.Place(Sun, t))
 		row[6], row[7] = p.Magnitude, p.Illuminated
 	}
 }
@@ -103,22 +103,38 @@ func (f *frame) sample(p Place) sample {
 }
 
 // Place gives the place of a body at an instant of the span.
-func (e *Ephemeris) Place(b Body, t time.Time) Place { return e.place(e.bodies[b].at(t), t) }
+func (e *Ephemeris) Place(b Body, t time.Time) Place { return e.place(e.bodies[b].at(t), e.sidereal(t)) }
+
+// sidereal is mean sidereal time at an instant.
+func (e *Ephemeris) sidereal(t time.Time) float64 {
+	ut := daysSinceJ2000(t)
+	return siderealTime(ut, (ut+e.days)/36525)
+}
 
 // place turns a sample to the hour angle of an instant.
-func (e *Ephemeris) place(s sample, t time.Time) Place {
+func (e *Ephemeris) place(s sample, sidereal float64) Place {
 	ra, dec := vector(s[:3]).lonLat()
-	ut := daysSinceJ2000(t)
-	gast := siderealTime(ut, (ut+e.days)/36525) + s[3]
-	return Place{circle(gast - ra), unit.Angle(dec), unit.Angle(s[4]), unit.Angle(s[5]), s[6], s[7]}
+	return Place{circle(sidereal + s[3] - ra), unit.Angle(dec), unit.Angle(s[4]), unit.Angle(s[5]), s[6], s[7]}
 }
 
 // at interpolates.
-func (s *samples) at(t time.Time) (mean sample) {
+func (s *samples) at(t time.Time) sample { return s.mean(s.blend(t)) }
+
+// blend is how the rows of an instant are weighed: those from first on.
+type blend struct {
+	first   int
+	weights [points]float64
+}
+
+func (s *samples) blend(t time.Time) blend {
 	x := float64(t.Sub(s.start)) / float64(s.step)
 	first := min(max(int(math.Floor(x))-points/2+1, 0), len(s.rows)-points)
-	for i, w := range lagrange(x - float64(first)) {
-		for k, v := range s.rows[first+i] {
+	return blend{first, lagrange(x - float64(first))}
+}
+
+func (s *samples) mean(b blend) (mean sample) {
+	for i, w := range b.weights {
+		for k, v := range s.rows[b.first+i] {
 			mean[k] += w * v
 		}
 	}
@@ -142,11 +158,23 @@ func lagrange(x float64) (w [points]float64) {
 }
 
 // At gives the places of all bodies at an instant of the span.
-func (e *Ephemeris) At(t time.Time) Sky { return instant{e, t} }
+func (e *Ephemeris) At(t time.Time) Sky {
+	return &instant{e, t, e.sidereal(t), e.bodies[Sun].blend(t)}
+}
 
+// instant shares what the bodies have in common: sidereal time, and (but for
+// the Moon) the steps of their samples.
 type instant struct {
 	ephemeris *Ephemeris
 	time      time.Time
+	sidereal  float64
+	slow      blend
 }
 
-func (i instant) Place(b Body) Place { return i.ephemeris.Place(b, i.time) }
+func (i *instant) Place(b Body) Place {
+	s := &i.ephemeris.bodies[b]
+	if b == Moon {
+		return i.ephemeris.place(s.at(i.time), i.sidereal)
+	}
+	return i.ephemeris.place(s.mean(i.slow), i.sidereal)
+}

@@ -17,17 +17,19 @@ type option struct {
 type chooser struct {
 	options []option
 	scaled  []information // the options', as the quick measure counts them
-	common  float64       // standard error common to the sights, minutes
+	common  float64       // weight of the error common to the sights
 	prior   information
 	loss    float64
 	pace    time.Duration
 	buffer  []exchange
+	own     outcomes   // of the set last measured
+	left    []outcomes // see climb
 }
 
 func (set *Settings) chooser(bodies []Candidate) *chooser {
 	weight := 1 / (set.DRError * set.DRError)
 	c := &chooser{
-		common: set.CommonError.Min(), loss: set.Loss, pace: set.Pace,
+		common: commonWeight(set.CommonError), loss: set.Loss, pace: set.Pace,
 		prior: information{cc: weight, ss: weight},
 	}
 	for _, b := range bodies {
@@ -38,31 +40,53 @@ func (set *Settings) chooser(bodies []Candidate) *chooser {
 	return c
 }
 
-// criterion is the expected error of the fix, in NM, when each sight may be
-// lost: the mean of √trace P over all that may be left, each weighted by its
-// chance. The DR position counts as a sight of its own with the standard error
+// outcomes are what may be left of a set of sights when each may be lost, with
+// the chance of each.
+type outcomes struct {
+	left   []information
+	chance []float64
+	mean   float64 // expected error, NM
+}
+
+// outcomes works out those of a set, in the storage of what was worked out
+// before. The DR position counts as a sight of its own with the standard error
 // of Settings.DRError north and east. So with no line left the error is √2 of
 // that, with one line little less: this is what fewer than two lines cost.
-func (c *chooser) criterion(set []int) float64 { return c.mean(set, c.prior) }
-
-func (c *chooser) mean(set []int, sum information) float64 {
-	if len(set) == 0 {
-		return sum.covariance(c.common).ExpectedError()
+func (c *chooser) outcomes(set []int, o outcomes) outcomes {
+	o.left, o.chance = append(o.left[:0], c.prior), append(o.chance[:0], 1)
+	for _, i := range set {
+		for k, n := 0, len(o.left); k < n; k++ {
+			if c.loss > 0 {
+				o.left, o.chance = append(o.left, o.left[k]), append(o.chance, o.chance[k]*c.loss)
+			}
+			o.left[k], o.chance[k] = o.left[k].add(c.options[i].information), o.chance[k]*(1-c.loss)
+		}
 	}
-	rest := set[1:]
-	kept := (1 - c.loss) * c.mean(rest, sum.add(c.options[set[0]].information))
-	if c.loss == 0 {
-		return kept
-	}
-	return kept + c.loss*c.mean(rest, sum)
+	o.mean = c.meanWith(&o, information{})
+	return o
 }
 
-// quick is a stand-in for the criterion, a hundred times cheaper: the error
-// when every sight counts for the part of it that is kept on average. It takes
-// the information of the set, so scaled.
-func (c *chooser) quick(sum information) float64 {
-	return sum.add(c.prior).covariance(c.common).ExpectedError()
+// meanWith is the mean over outcomes of the expected error when something more
+// is known.
+func (c *chooser) meanWith(o *outcomes, more information) (mean float64) {
+	for k, chance := range o.chance {
+		sum := o.left[k].add(more)
+		mean += chance * math.Sqrt(sum.square(c.common))
+	}
+	return mean
 }
+
+// criterion is the expected error of the fix, in NM, when each sight may be
+// lost: the mean over all that may be left.
+func (c *chooser) criterion(set []int) float64 {
+	c.own = c.outcomes(set, c.own)
+	return c.own.mean
+}
+
+// quick is a stand-in for the square of the criterion, a hundred times cheaper:
+// that of the error when every sight counts for the part of it that is kept on
+// average. It takes the information of the set, so scaled, and the prior.
+func (c *chooser) quick(sum *information) float64 { return sum.square(c.common) }
 
 func (a information) scale(f float64) information {
 	return information{a.cc * f, a.cs * f, a.ss * f, a.c * f, a.s * f, a.w * f}
@@ -72,7 +96,7 @@ func (a information) scale(f float64) information {
 // of the quick climb (about), the best of its sets that the criterion climbs on
 // from, and exchanges that the criterion looks at in one step.
 const (
-	climbs = 6
+	climbs = 4
 	tops   = 3
 	looked = 16
 )
@@ -115,24 +139,43 @@ type exchange struct {
 // the next call.
 func (c *chooser) exchanges(set []int, n int) []exchange {
 	all := c.buffer[:0]
-	var sum information
+	sum := c.prior
 	for _, i := range set {
 		sum = sum.add(c.scaled[i])
 	}
-	for i := range c.options {
-		if slices.Contains(set, i) {
-			continue
+	add := func(out int, rest information) {
+		for i := range c.options {
+			if !slices.Contains(set, i) {
+				with := rest.add(c.scaled[i])
+				all = append(all, exchange{i, out, c.quick(&with)})
+			}
 		}
-		with := sum.add(c.scaled[i])
-		if len(set) < n {
-			all = append(all, exchange{i, -1, c.quick(with)})
-		}
-		for k, out := range set {
-			all = append(all, exchange{i, k, c.quick(with.add(c.scaled[out].scale(-1)))})
-		}
+	}
+	if len(set) < n {
+		add(-1, sum)
+	}
+	for k, out := range set {
+		add(k, sum.add(c.scaled[out].scale(-1)))
 	}
 	c.buffer = all
 	return all
+}
+
+// likeliest keeps the best few exchanges by the quick measure, the best first.
+func likeliest(all []exchange) []exchange {
+	n := 0
+	for _, x := range all {
+		if n == looked && x.quick >= all[n-1].quick {
+			continue
+		}
+		i := min(n, looked-1)
+		for ; i > 0 && x.quick < all[i-1].quick; i-- {
+			all[i] = all[i-1]
+		}
+		all[i] = x
+		n = min(n+1, looked)
+	}
+	return all[:n]
 }
 
 // climbQuick betters a set by the best addition or exchange until none helps,
@@ -156,19 +199,26 @@ func (c *chooser) climbQuick(set []int, n int) (_ []int, least float64) {
 }
 
 // climb does the same by the criterion, of those exchanges that the quick
-// measure likes best.
+// measure likes best. What may be left of the sights that stay is worked out
+// once for each that goes.
 func (c *chooser) climb(set []int, n int) []int {
 	least := c.criterion(set)
+	if c.left == nil {
+		c.left = make([]outcomes, n+1)
+	}
 	for {
-		all := c.exchanges(set, n)
-		slices.SortFunc(all, func(a, b exchange) int {
-			return cmp.Or(cmp.Compare(a.quick, b.quick), cmp.Compare(a.in, b.in), cmp.Compare(a.out, b.out))
-		})
 		var better []int
-		for _, x := range all[:min(len(all), looked)] {
-			next := insert(set, x)
-			if m := c.criterion(next); m < least-1e-9 && c.feasible(next) {
-				better, least = next, m
+		done := make([]bool, n+1)
+		for _, x := range likeliest(c.exchanges(set, n)) {
+			stay := &c.left[x.out+1]
+			if !done[x.out+1] {
+				*stay, done[x.out+1] = c.outcomes(without(set, x.out), *stay), true
+			}
+			m := c.loss*stay.mean + (1-c.loss)*c.meanWith(stay, c.options[x.in].information)
+			if m < least-1e-9 {
+				if next := insert(set, x); c.feasible(next) {
+					better, least = next, m
+				}
 			}
 		}
 		if better == nil {
@@ -178,14 +228,20 @@ func (c *chooser) climb(set []int, n int) []int {
 	}
 }
 
-// insert is a set after an exchange.
-func insert(set []int, x exchange) []int {
-	next := make([]int, 0, len(set)+1)
+// without is a set less the one at a place of it, or all where that is -1.
+func without(set []int, place int) []int {
+	rest := make([]int, 0, len(set)+1)
 	for k, i := range set {
-		if k != x.out {
-			next = append(next, i)
+		if k != place {
+			rest = append(rest, i)
 		}
 	}
+	return rest
+}
+
+// insert is a set after an exchange.
+func insert(set []int, x exchange) []int {
+	next := without(set, x.out)
 	at, _ := slices.BinarySearch(next, x.in)
 	return slices.Insert(next, at, x.in)
 }

@@ -113,7 +113,7 @@ func TestCriterionWrittenOut(t *testing.T) {
 				chance *= set.Loss
 			}
 		}
-		want += chance * sum.covariance(set.CommonError.Min()).ExpectedError()
+		want += chance * sum.covariance(commonWeight(set.CommonError)).ExpectedError()
 	}
 	if got := c.criterion(chosen); math.Abs(got-want) > 1e-12 {
 		t.Errorf("criterion %.9f, written out %.9f", got, want)

@@ -41,22 +41,40 @@ func (a information) add(b information) information {
 	return information{a.cc + b.cc, a.cs + b.cs, a.ss + b.ss, a.c + b.c, a.s + b.s, a.w + b.w}
 }
 
-// covariance inverts the information on position after the common error, of
-// standard error common (minutes), is marginalised. Where the sights do not fix
-// a position its entries are +Inf.
-func (a information) covariance(common float64) Covariance {
-	if common > 0 {
-		k := 1 / (a.w + 1/(common*common))
-		a.cc -= a.c * a.c * k
-		a.cs -= a.c * a.s * k
-		a.ss -= a.s * a.s * k
+// position is what is known of the position alone, the common error
+// marginalised, times a factor that saves a division; and the determinant of
+// that: not above zero where the sights do not fix a position. weight is 1/s² of
+// the common error's standard error s in minutes, +Inf where there is none.
+func (a *information) position(weight float64) (cc, cs, ss, factor, det float64) {
+	if math.IsInf(weight, 1) {
+		return a.cc, a.cs, a.ss, 1, a.cc*a.ss - a.cs*a.cs - 1e-12*a.w*a.w
 	}
-	det := a.cc*a.ss - a.cs*a.cs
-	if det <= 1e-12*a.w*a.w {
+	f := a.w + weight
+	cc, cs, ss = a.cc*f-a.c*a.c, a.cs*f-a.c*a.s, a.ss*f-a.s*a.s
+	return cc, cs, ss, f, cc*ss - cs*cs - 1e-12*a.w*a.w*f*f
+}
+
+// covariance is that of the position; where the sights do not fix one its
+// entries are +Inf.
+func (a *information) covariance(weight float64) Covariance {
+	cc, cs, ss, f, det := a.position(weight)
+	if det <= 0 {
 		return Covariance{math.Inf(1), 0, math.Inf(1)}
 	}
-	return Covariance{NN: a.ss / det, NE: -a.cs / det, EE: a.cc / det}
+	return Covariance{NN: ss * f / det, NE: -cs * f / det, EE: cc * f / det}
 }
+
+// square is the trace of the covariance: the expected error squared, in NM².
+func (a *information) square(weight float64) float64 {
+	cc, _, ss, f, det := a.position(weight)
+	if det <= 0 {
+		return math.Inf(1)
+	}
+	return (cc + ss) * f / det
+}
+
+// commonWeight is 1/s² of a standard error in minutes; +Inf for none.
+func commonWeight(s unit.Angle) float64 { return 1 / (s.Min() * s.Min()) }
 
 // FixCovariance is the covariance of the fix from sights that share a common
 // error (index, dip, the observer's own), by least squares:
@@ -69,7 +87,7 @@ func FixCovariance(sights []Sight, common unit.Angle) Covariance {
 	for _, g := range sights {
 		sum = sum.add(g.information())
 	}
-	return sum.covariance(common.Min())
+	return sum.covariance(commonWeight(common))
 }
 
 // ExpectedError is the root mean square distance of the fix from the truth,

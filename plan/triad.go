@@ -20,13 +20,14 @@ func (set *Settings) triads(bodies []Candidate) []Triad {
 	for i, c := range bodies {
 		parts[i] = Sight{c.Azimuth, c.Error}.information()
 	}
+	weight := commonWeight(set.CommonError)
 	var best ranking
 	for i := range parts {
 		for j := i + 1; j < len(parts); j++ {
 			pair := parts[i].add(parts[j])
 			for k := j + 1; k < len(parts); k++ {
-				cov := pair.add(parts[k]).covariance(set.CommonError.Min())
-				best.offer(ranked{cov.NN + cov.EE, [3]int{i, j, k}})
+				three := pair.add(parts[k])
+				best.offer(ranked{three.square(weight), [3]int{i, j, k}})
 			}
 		}
 	}
