@@ -2,7 +2,9 @@ package astro
 
 import (
 	"math"
+	"runtime"
 	"sync"
+	"sync/atomic"
 	"time"
 
 	"github.com/soniakeys/unit"
@@ -40,43 +42,58 @@ const points = 6
 // function given.
 func NewEphemeris(from, to time.Time, deltaT func(time.Time) time.Duration) *Ephemeris {
 	e := &Ephemeris{days: deltaT(from.Add(to.Sub(from)/2)).Hours() / 24, bodies: make([]samples, len(Bodies()))}
-	var moon sync.WaitGroup
-	moon.Go(func() { e.bodies[Moon] = moonSamples(from, to, deltaT) })
-	slow := newSamples(48*time.Hour, from, to)
-	times := slow.times(to)
 	for _, b := range Bodies() {
-		if b != Moon {
-			e.bodies[b] = slow
-			e.bodies[b].rows = make([]sample, len(times))
+		step := 48 * time.Hour
+		if b == Moon {
+			step = 12 * time.Hour
 		}
+		e.bodies[b] = newSamples(step, from, to)
 	}
-	for i, t := range times {
-		m := NewMoment(t, deltaT(t))
-		for _, b := range Bodies() {
-			if b != Moon {
-				e.bodies[b].rows[i] = m.sample(m.Place(b))
-			}
-		}
+	var tasks []func()
+	moon := e.bodies[Moon]
+	for i := range moon.rows { // but for how it looks
+		tasks = append(tasks, func() {
+			t := moon.time(i)
+			f := newFrame(t, deltaT(t))
+			moon.rows[i] = f.sample(f.moon())
+		})
 	}
-	moon.Wait()
+	for i := range e.bodies[Sun].rows {
+		tasks = append(tasks, func() { e.fillSlow(i, deltaT) })
+	}
+	onAllCores(tasks)
 	e.lightMoon()
 	return e
 }
 
-// moonSamples are the Moon's, but for how it looks.
-func moonSamples(from, to time.Time, deltaT func(time.Time) time.Duration) samples {
-	s := newSamples(12*time.Hour, from, to)
-	for _, t := range s.times(to) {
-		f := newFrame(t, deltaT(t))
-		s.rows = append(s.rows, f.sample(f.moon()))
+// fillSlow fills in one row of all bodies but the Moon.
+func (e *Ephemeris) fillSlow(i int, deltaT func(time.Time) time.Duration) {
+	t := e.bodies[Sun].time(i)
+	m := NewMoment(t, deltaT(t))
+	for _, b := range Bodies() {
+		if b != Moon {
+			e.bodies[b].rows[i] = m.sample(m.Place(b))
+		}
 	}
-	return s
+}
+
+func onAllCores(tasks []func()) {
+	var group sync.WaitGroup
+	var next atomic.Int64
+	for range runtime.GOMAXPROCS(0) {
+		group.Go(func() {
+			for i := next.Add(1) - 1; i < int64(len(tasks)); i = next.Add(1) - 1 {
+				tasks[i]()
+			}
+		})
+	}
+	group.Wait()
 }
 
 // lightMoon fills in how the Moon looks, which takes the Sun's place.
 func (e *Ephemeris) lightMoon() {
 	for i := range e.bodies[Moon].rows {
-		t := e.bodies[Moon].start.Add(time.Duration(i) * e.bodies[Moon].step)
+		t := e.bodies[Moon].time(i)
 		row := &e.bodies[Moon].rows[i]
 		p := e.place(*row, e.sidereal(t)).litBy(e.Place(Sun, t))
 		row[6], row[7] = p.Magnitude, p.Illuminated
@@ -84,18 +101,16 @@ func (e *Ephemeris) lightMoon() {
 }
 
 // newSamples starts so far before a span that its beginning lies in the middle
-// of the rows used.
+// of the rows used, and ends so far after it.
 func newSamples(step time.Duration, from, to time.Time) samples {
-	return samples{start: from.Add(-points / 2 * step), step: step}
+	s := samples{start: from.Add(-points / 2 * step), step: step}
+	n := math.Ceil(float64(to.Sub(s.start))/float64(step)) + points/2
+	s.rows = make([]sample, int(n))
+	return s
 }
 
-// times are the instants of the rows that a span to the instant given needs.
-func (s samples) times(to time.Time) (all []time.Time) {
-	for t := s.start; t.Before(to.Add(points / 2 * s.step)); t = t.Add(s.step) {
-		all = append(all, t)
-	}
-	return all
-}
+// time is the instant of a row.
+func (s *samples) time(i int) time.Time { return s.start.Add(time.Duration(i) * s.step) }
 
 func (f *frame) sample(p Place) sample {
 	d := spherical(f.gast-p.GHA.Rad(), p.Dec.Rad())

@@ -32,12 +32,12 @@ func longPassage(tb testing.TB, days int) *track.Passage {
 }
 
 // benchmarkPlan reports the cost of a voyage's day beside the usual figures.
-func benchmarkPlan(b *testing.B, days int) {
+func benchmarkPlan(b *testing.B, days int, set Settings) {
 	p := longPassage(b, days)
 	sailed := p.Arrival.Sub(p.Departure).Hours() / 24
 	b.ReportAllocs()
 	for b.Loop() {
-		if _, err := New(p, DefaultSettings()); err != nil {
+		if _, err := New(p, set); err != nil {
 			b.Fatal(err)
 		}
 	}
@@ -45,8 +45,16 @@ func benchmarkPlan(b *testing.B, days int) {
 	b.ReportMetric(float64(b.Elapsed().Microseconds())/float64(b.N)/sailed, "µs/day")
 }
 
-func BenchmarkPlan15Days(b *testing.B)  { benchmarkPlan(b, 15) }
-func BenchmarkPlan150Days(b *testing.B) { benchmarkPlan(b, 150) }
+func BenchmarkPlan15Days(b *testing.B)  { benchmarkPlan(b, 15, DefaultSettings()) }
+func BenchmarkPlan150Days(b *testing.B) { benchmarkPlan(b, 150, DefaultSettings()) }
+
+// With rounds of one sight nothing is chosen: events, windows, what can be
+// seen, and all triads.
+func BenchmarkTriads15Days(b *testing.B) {
+	set := DefaultSettings()
+	set.Sights = 1
+	benchmarkPlan(b, 15, set)
+}
 
 func BenchmarkWriteText(b *testing.B) {
 	p := planOf(b, longPassage(b, 15), DefaultSettings())

@@ -89,16 +89,20 @@ func (s *sky) sight(c *Candidate, t time.Time, set *Settings) RoundSight {
 
 // bestPair finds the two candidates that give the best fix.
 func (set *Settings) bestPair(bodies []Candidate) (best FixQuality, ok bool) {
-	least := math.Inf(1)
-	for i, a := range bodies {
-		for _, b := range bodies[:i] {
-			sights := []Sight{{b.Azimuth, b.Error}, {a.Azimuth, a.Error}}
-			if x := FixCovariance(sights, set.CommonError).ExpectedError(); x < least {
-				least, best, ok = x, set.quality([]astro.Body{b.Body, a.Body}, sights), true
+	parts, weight, least := informations(bodies), commonWeight(set.CommonError), math.Inf(1)
+	var a, b *Candidate
+	for i := range parts {
+		for j := range i {
+			both := parts[i].add(parts[j])
+			if x := both.square(weight); x < least {
+				least, a, b = x, &bodies[j], &bodies[i]
 			}
 		}
 	}
-	return best, ok
+	if a == nil {
+		return best, false
+	}
+	return set.quality([]astro.Body{a.Body, b.Body}, []Sight{{a.Azimuth, a.Error}, {b.Azimuth, b.Error}}), true
 }
 
 // usable gives the longest part of a window in which at least three bodies can

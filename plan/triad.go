@@ -16,10 +16,7 @@ const triadsListed = 5
 // triads searches all triads of the candidates and gives the best few, in
 // order of expected error.
 func (set *Settings) triads(bodies []Candidate) []Triad {
-	parts := make([]information, len(bodies))
-	for i, c := range bodies {
-		parts[i] = Sight{c.Azimuth, c.Error}.information()
-	}
+	parts := informations(bodies)
 	weight := commonWeight(set.CommonError)
 	var best ranking
 	for i := range parts {
@@ -41,6 +38,15 @@ func (set *Settings) triads(bodies []Candidate) []Triad {
 		all = append(all, Triad{set.quality(names, sights)})
 	}
 	return all
+}
+
+// informations are what each candidate would tell.
+func informations(bodies []Candidate) []information {
+	parts := make([]information, len(bodies))
+	for i, c := range bodies {
+		parts[i] = Sight{c.Azimuth, c.Error}.information()
+	}
+	return parts
 }
 
 // ranked is a triad found, with the square of its expected error.

@@ -58,10 +58,10 @@ func (l *lookout) hidden(b astro.Body, magnitude float64, hc, zn unit.Angle) str
 		return behindBlind
 	case within(l.set.Clouds, zn):
 		return underCloud
-	case b != astro.Sun && b != astro.Moon && magnitude > l.faintest(hc, zn):
-		return tooFaint
 	case !l.horizon(zn):
 		return noHorizon
+	case b != astro.Sun && b != astro.Moon && magnitude > l.faintest(hc, zn): // last, being dear
+		return tooFaint
 	}
 	return ""
 }
@@ -87,8 +87,8 @@ var turnPerHour = unit.AngleFromDeg(15.04)
 
 // visible finds the span of a window in which each candidate can be shot, and
 // leaves out those that never can. The sky is looked at every four minutes, at
-// least six times and at most fifty; the ends of a span are then halved to ten
-// seconds. Of several spans the longest counts.
+// least six times and at most fifty; the ends of a span are then halved to a
+// quarter of a minute. Of several spans the longest counts.
 func (s *sky) visible(w *Window, set *Settings, bodies []Candidate) []Candidate {
 	length := w.End.Sub(w.Begin)
 	n := int(min(max(length/(4*time.Minute), 6), 50))
@@ -154,9 +154,9 @@ func longestRun(n int, ok func(int) bool) (first, last int) {
 }
 
 // edge halves the way from an instant at which ok fails to one at which it
-// holds, to ten seconds, and gives the end at which it holds.
+// holds, to a quarter of a minute, and gives the end at which it holds.
 func edge(fails, holds time.Time, ok func(time.Time) bool) time.Time {
-	for holds.Sub(fails).Abs() > 10*time.Second {
+	for holds.Sub(fails).Abs() > 15*time.Second {
 		mid := middle(fails, holds)
 		if ok(mid) {
 			holds = mid

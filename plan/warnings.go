@@ -27,8 +27,10 @@ func warnings(bodies []Candidate, moon astro.Place, l *lookout) (all []string) {
 			all = append(all, fmt.Sprintf("%v stands %.1f° from the Moon: hard to see", a.Body, d.Deg()))
 		}
 		for _, b := range bodies[:i] {
-			d := a.Separation(b.Place)
-			if a.Body != astro.Moon && b.Body != astro.Moon && d < nearTwins && math.Abs(a.Magnitude-b.Magnitude) < twins {
+			if a.Body == astro.Moon || b.Body == astro.Moon || math.Abs(a.Magnitude-b.Magnitude) >= twins || math.Abs((a.Dec-b.Dec).Rad()) >= nearTwins.Rad() {
+				continue // by now few pairs are left to be measured
+			}
+			if d := a.Separation(b.Place); d < nearTwins {
 				all = append(all, fmt.Sprintf("%v and %v are %.1f° apart: do not take one for the other", b.Body, a.Body, d.Deg()))
 			}
 		}
