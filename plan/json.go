@@ -25,7 +25,7 @@ func (p *Plan) WriteJSON(w io.Writer) error {
 	return enc.Encode(jsonPlan{
 		Format: Format, Version: Version,
 		Voyage:   voyageJSON(p.Passage),
-		Observer: p.Settings.json(),
+		Observer: p.Settings.json(), Choices: p.Settings.choices(),
 		Events:   each(p.Events(), p.eventJSON),
 		Windows:  each(p.Windows(), p.windowJSON),
 		Days:     each(p.Days, dayJSON),
@@ -63,6 +63,17 @@ func (set Settings) json() jsonObserver {
 		Pressure: brief(set.PressureHPa), SightError: arcmin(set.SightError), CommonError: arcmin(set.CommonError),
 	}
 }
+
+func (set Settings) choices() jsonChoices {
+	return jsonChoices{
+		Lowest: deg(set.LowestAltitude), Highest: deg(set.HighestAltitude), UpperSun: deg(set.UpperSun), LowerSun: deg(set.LowerSun),
+		HorizonAway: deg(set.HorizonAway), HorizonUnder: deg(set.HorizonUnder), Gain: brief(set.TelescopeGain), Humidity: brief(set.Humidity),
+		Clouds: each(set.Clouds, arcJSON), Blind: each(set.Blind, arcJSON), Without: each(set.Without, astro.Body.String),
+		Sights: set.Sights, Pace: brief(set.Pace.Seconds()), Loss: brief(set.Loss), DRError: miles(set.DRError),
+	}
+}
+
+func arcJSON(a Arc) [2]deg { return [2]deg{deg(a.From), deg(a.To)} }
 
 func (p *Plan) eventJSON(e Event) jsonEvent {
 	return jsonEvent{e.Kind, utc(e.Time), utc(p.Clock.At(e.Time)), deg(e.Lat), east(e.Lon)}
@@ -121,13 +132,7 @@ func bodyJSON(c Candidate) jsonBody {
 	}
 }
 
-func triadJSON(t Triad) jsonTriad {
-	q := t.FixQuality
-	return jsonTriad{
-		Bodies: [3]string(each(q.Bodies, astro.Body.String)), LeastGap: deg(q.LeastGap), GreatestGap: deg(q.GreatestGap),
-		Error: miles(q.Covariance.ExpectedError()), Ellipse: ellipseJSON(q.Covariance), Ratio: brief(q.Ratio),
-	}
-}
+func triadJSON(t Triad) *jsonQuality { return qualityJSON(t.FixQuality) }
 
 func dayJSON(d Day) jsonDay {
 	return jsonDay{

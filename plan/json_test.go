@@ -29,7 +29,7 @@ func written(t *testing.T, v voyage) (string, map[string]any) {
 
 // fields is every member that the format promises, by the object it stands in.
 var fields = map[string]string{
-	"":               "format version voyage observer events windows days notes cautions",
+	"":               "format version voyage observer choices events windows days notes cautions",
 	"voyage":         "name departure arrival distance_nm legs",
 	"legs":           "from to sailing course_deg distance_nm speed_kn etd eta",
 	"from":           "name lat lon",
@@ -42,6 +42,7 @@ var fields = map[string]string{
 	"round_fix":      "bodies least_gap_deg greatest_gap_deg expected_error_nm ellipse ratio_to_floor",
 	"pair_fix":       "bodies least_gap_deg greatest_gap_deg expected_error_nm ellipse ratio_to_floor",
 	"round":          "body time altitude_deg azimuth_deg relative_deg preset_deg limb rate_arcmin_per_min preset_5_min_late_deg",
+	"choices":        "lowest_altitude_deg highest_altitude_deg upper_sun_deg lower_sun_deg horizon_away_deg horizon_under_deg telescope_gain humidity clouds_deg blind_deg without sights pace_s loss dr_error_nm",
 	"ellipse":        "semi_major_nm semi_minor_nm axis_deg",
 	"days":           "ship_date ship_time_offset begin end moon_illuminated_fraction moon_waxing no_window remains",
 	"remains":        "body highest altitude_deg",

@@ -65,6 +65,7 @@ type jsonPlan struct {
 	Version  string       `json:"version"`
 	Voyage   jsonVoyage   `json:"voyage"`
 	Observer jsonObserver `json:"observer"`
+	Choices  jsonChoices  `json:"choices"`
 	Events   []jsonEvent  `json:"events"`
 	Windows  []jsonWindow `json:"windows"`
 	Days     []jsonDay    `json:"days"`
@@ -106,6 +107,25 @@ type jsonObserver struct {
 	CommonError arcmin `json:"common_error_arcmin"`
 }
 
+// jsonChoices is what the user asked of the sky and of the round.
+type jsonChoices struct {
+	Lowest       deg      `json:"lowest_altitude_deg"`
+	Highest      deg      `json:"highest_altitude_deg"`
+	UpperSun     deg      `json:"upper_sun_deg"`
+	LowerSun     deg      `json:"lower_sun_deg"`
+	HorizonAway  deg      `json:"horizon_away_deg"`
+	HorizonUnder deg      `json:"horizon_under_deg"`
+	Gain         brief    `json:"telescope_gain"`
+	Humidity     brief    `json:"humidity"`
+	Clouds       [][2]deg `json:"clouds_deg"` // true bearings, clockwise
+	Blind        [][2]deg `json:"blind_deg"`  // from the bow
+	Without      []string `json:"without"`
+	Sights       int      `json:"sights"`
+	Pace         brief    `json:"pace_s"`
+	Loss         brief    `json:"loss"`
+	DRError      miles    `json:"dr_error_nm"`
+}
+
 type jsonEvent struct {
 	Kind     EventKind `json:"kind"`
 	Time     utc       `json:"time"`
@@ -115,25 +135,25 @@ type jsonEvent struct {
 }
 
 type jsonWindow struct {
-	ID          string       `json:"id"`
-	Kind        WindowKind   `json:"kind"`
-	Begin       utc          `json:"begin"`
-	End         utc          `json:"end"`
-	Best        utc          `json:"best"`
-	Lat         deg          `json:"lat"`
-	Lon         east         `json:"lon"`
-	Course      turn         `json:"course_deg"`
-	Speed       brief        `json:"speed_kn"`
-	Offset      offset       `json:"ship_time_offset"`
-	Bodies      []jsonBody   `json:"bodies"`
-	Triads      []jsonTriad  `json:"triads"`
-	Round       []jsonSight  `json:"round"`
-	UsableBegin *utc         `json:"usable_begin"` // null where never
-	UsableEnd   *utc         `json:"usable_end"`
-	RoundFix    *jsonQuality `json:"round_fix"` // null where there is no round
-	PairFix     *jsonQuality `json:"pair_fix"`
-	Comment     string       `json:"comment"`
-	Warnings    []string     `json:"warnings"`
+	ID          string         `json:"id"`
+	Kind        WindowKind     `json:"kind"`
+	Begin       utc            `json:"begin"`
+	End         utc            `json:"end"`
+	Best        utc            `json:"best"`
+	Lat         deg            `json:"lat"`
+	Lon         east           `json:"lon"`
+	Course      turn           `json:"course_deg"`
+	Speed       brief          `json:"speed_kn"`
+	Offset      offset         `json:"ship_time_offset"`
+	Bodies      []jsonBody     `json:"bodies"`
+	Triads      []*jsonQuality `json:"triads"`
+	Round       []jsonSight    `json:"round"`
+	UsableBegin *utc           `json:"usable_begin"` // null where never
+	UsableEnd   *utc           `json:"usable_end"`
+	RoundFix    *jsonQuality   `json:"round_fix"` // null where there is no round
+	PairFix     *jsonQuality   `json:"pair_fix"`
+	Comment     string         `json:"comment"`
+	Warnings    []string       `json:"warnings"`
 }
 
 type jsonSight struct {
@@ -169,15 +189,6 @@ type jsonBody struct {
 	Limb      string      `json:"limb"`
 	From      utc         `json:"from"`
 	To        utc         `json:"to"`
-}
-
-type jsonTriad struct {
-	Bodies      [3]string   `json:"bodies"`
-	LeastGap    deg         `json:"least_gap_deg"`
-	GreatestGap deg         `json:"greatest_gap_deg"`
-	Error       miles       `json:"expected_error_nm"`
-	Ellipse     jsonEllipse `json:"ellipse"`
-	Ratio       brief       `json:"ratio_to_floor"`
 }
 
 type jsonEllipse struct {

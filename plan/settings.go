@@ -69,12 +69,21 @@ func DefaultSettings() Settings {
 	}
 }
 
-// Validate tells the first setting that is out of range.
+// SettingError is a setting out of range.
+type SettingError struct {
+	Name            string // with its unit in brackets
+	Value, Min, Max float64
+}
+
+// Error writes "NAME: VALUE (MIN to MAX)".
+func (e *SettingError) Error() string {
+	return fmt.Sprintf("%s: %.4g (%.4g to %.4g)", e.Name, e.Value, e.Min, e.Max)
+}
+
+// Validate tells the first setting that is out of range, as a *[SettingError],
+// or what does not go together.
 func (s Settings) Validate() error {
-	for _, c := range []struct {
-		name            string
-		value, min, max float64
-	}{
+	for _, c := range []SettingError{
 		{"height of eye (m)", s.EyeM, 0, 100},
 		{"index error (')", s.IndexError.Min(), -60, 60},
 		{"temperature (°C)", s.TemperatureC, -60, 60},
@@ -94,8 +103,8 @@ func (s Settings) Validate() error {
 		{"chance of losing a sight", s.Loss, 0, 0.99},
 		{"error of the DR position (NM)", s.DRError, 0.1, 100},
 	} {
-		if math.IsNaN(c.value) || c.value < c.min-1e-9 || c.value > c.max+1e-9 {
-			return fmt.Errorf("%s: %.4g (%.4g to %.4g)", c.name, c.value, c.min, c.max)
+		if math.IsNaN(c.Value) || c.Value < c.Min-1e-9 || c.Value > c.Max+1e-9 {
+			return &c
 		}
 	}
 	if covered(s.Clouds) || covered(s.Blind) {

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 	"io/fs"
+	"math/rand/v2"
 	"os"
 	"path/filepath"
 )
@@ -85,24 +86,63 @@ func stage(o output) (staged, error) {
 	if real, err := filepath.EvalSymlinks(path); err == nil {
 		path = real
 	}
-	mode := fs.FileMode(0o666)
-	if info, err := os.Stat(path); err == nil {
-		if info.IsDir() {
-			return staged{}, errors.New("it is a folder")
-		}
-		mode = info.Mode().Perm()
+	earlier, err := os.Stat(path)
+	if err == nil && earlier.IsDir() {
+		return staged{}, errors.New("it is a folder")
 	}
-	temporary := fmt.Sprintf("%s.%d.part", path, os.Getpid())
-	f, err := os.OpenFile(temporary, os.O_WRONLY|os.O_CREATE|os.O_EXCL, mode)
+	f, err := temporary(path)
 	if err != nil {
 		return staged{}, err
 	}
-	_, err = f.Write(o.data.Bytes())
-	if err = errors.Join(err, f.Sync(), f.Close()); err != nil {
-		os.Remove(temporary)
+	if earlier != nil {
+		err = f.Chmod(earlier.Mode().Perm())
+	}
+	_, failed := f.Write(o.data.Bytes())
+	if err = errors.Join(err, failed, f.Sync(), f.Close()); err != nil {
+		os.Remove(f.Name())
 		return staged{}, err
 	}
-	return staged{temporary, path}, nil
+	return staged{f.Name(), path}, nil
+}
+
+// temporary makes a new file beside a path, with the permissions that a new
+// file gets here (os.CreateTemp would keep it from everybody else).
+func temporary(path string) (f *os.File, err error) {
+	for range 100 {
+		name := fmt.Sprintf("%s.%08x.part", path, rand.Uint32())
+		f, err = os.OpenFile(name, os.O_WRONLY|os.O_CREATE|os.O_EXCL, 0o666)
+		if !errors.Is(err, fs.ErrExist) {
+			break
+		}
+	}
+	return f, err
+}
+
+// sameOutput tells whether two paths, neither empty, name one file, there or
+// not.
+func sameOutput(a, b string) bool {
+	return a != "" && b != "" && (whole(a) == whole(b) || sameFile(a, b))
+}
+
+// whole is a path with its folder's links followed.
+func whole(path string) string {
+	if path == "-" {
+		return path
+	}
+	folder, err := filepath.EvalSymlinks(filepath.Dir(path))
+	if err == nil {
+		folder, err = filepath.Abs(folder)
+	}
+	if err != nil {
+		return filepath.Clean(path)
+	}
+	return filepath.Join(folder, filepath.Base(path))
+}
+
+func sameFile(a, b string) bool {
+	ia, errA := os.Stat(a)
+	ib, errB := os.Stat(b)
+	return errA == nil && errB == nil && ia.Mode().IsRegular() && os.SameFile(ia, ib)
 }
 
 func writeDirect(o output, stdout io.Writer) error {

@@ -6,7 +6,6 @@ import (
 	"fmt"
 	"io"
 	"os"
-	"path/filepath"
 	"strconv"
 	"time"
 
@@ -94,7 +93,7 @@ func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
 	set.ShipTime = rule
 	p, err := plan.New(passage, set)
 	if err != nil {
-		return nil, hinted{err, settingHint}
+		return nil, settingError(err)
 	}
 	p.Notes = r.Notes
 	return p, nil
@@ -105,7 +104,7 @@ func (f *planFlags) check(route string) error {
 	switch {
 	case f.alarm < 0:
 		return usage(fmt.Errorf("--alarm %v (0 or more, as 20m)", f.alarm))
-	case f.ics != "" && filepath.Clean(f.ics) == filepath.Clean(f.json):
+	case sameOutput(f.ics, f.json):
 		return usage(errors.New("--ics and --json name the same output"))
 	}
 	for flag, path := range map[string]string{"--ics": f.ics, "--json": f.json} {
@@ -114,12 +113,6 @@ func (f *planFlags) check(route string) error {
 		}
 	}
 	return nil
-}
-
-func sameFile(a, b string) bool {
-	ia, errA := os.Stat(a)
-	ib, errB := os.Stat(b)
-	return errA == nil && errB == nil && ia.Mode().IsRegular() && os.SameFile(ia, ib)
 }
 
 // stampTime is the time put into calendars: SOURCE_DATE_EPOCH, or the clock's.

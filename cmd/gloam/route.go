@@ -77,7 +77,7 @@ func (f *routeFlags) write(b *bytes.Buffer, p *track.Passage, eyeM float64) erro
 	}
 	pl, err := plan.New(p, set)
 	if err != nil {
-		return hinted{err, settingHint}
+		return settingError(err)
 	}
 	marks := append(p.HourlyMarks(), pl.Marks()...)
 	if f.to == "gpx" {

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"time"
 
@@ -56,8 +57,23 @@ func (f *settingsFlags) define(cmd *cobra.Command) {
 	})
 }
 
-// settingHint goes with a setting out of range.
-const settingHint = "change the flag that sets it; --help lists them all"
+// settingFlags name the flag that sets what a plan calls otherwise.
+var settingFlags = map[string]string{
+	"height of eye (m)": "eye", "index error (')": "index-error", "temperature (°C)": "temperature", "pressure (hPa)": "pressure",
+	"sight error (')": "sight-error", "common error (')": "common-error", "lowest altitude (°)": "lowest", "highest altitude (°)": "highest",
+	"Sun's lower limit (°)": "sun-lower", "Sun's upper limit (°)": "sun-upper", "humidity": "humidity", "telescope's gain (magnitudes)": "telescope-gain",
+	"Sun's altitude for the horizon opposite it (°)": "horizon-away", "Sun's altitude for the horizon under it (°)": "horizon-under",
+	"sights": "sights", "pace (s)": "pace", "chance of losing a sight": "loss", "error of the DR position (NM)": "dr-error",
+}
+
+// settingError tells which flag sets what is out of range.
+func settingError(err error) error {
+	var s *plan.SettingError
+	if errors.As(err, &s) && settingFlags[s.Name] != "" {
+		return hinted{err, "give --" + settingFlags[s.Name] + " within these limits, or leave it out"}
+	}
+	return hinted{err, "change the flag that sets it; --help lists them all"}
+}
 
 // settings turns the flags into settings; eyeM, where above zero, is the height
 // of eye that a file gives, over which the flag wins.

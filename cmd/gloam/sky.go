@@ -65,7 +65,7 @@ func (f *skyFlags) run(w world) error {
 	from := track.PositionFromDeg(lat.Deg(), lon.Deg())
 	report, err := plan.NewReport(at, from, unit.AngleFromDeg(f.course).Mod1(), f.speed, set)
 	if err != nil {
-		return hinted{err, settingHint}
+		return settingError(err)
 	}
 	var b bytes.Buffer
 	if err := report.WriteText(&b, bold(w)); err != nil {

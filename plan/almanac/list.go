@@ -4,16 +4,14 @@ import (
 	"time"
 
 	"gloam/astro"
+	"gloam/track"
 )
 
 // MaxHours is how many hours a list may span.
 const MaxHours = 400 * 24
 
 // The span of instants served.
-var (
-	Earliest = time.Date(1990, 1, 1, 0, 0, 0, 0, time.UTC)
-	Latest   = time.Date(2101, 1, 1, 0, 0, 0, 0, time.UTC)
-)
+var Earliest, Latest = track.Earliest, track.Latest
 
 // Serves tells whether an instant lies in [Earliest, Latest).
 func Serves(t time.Time) bool { return !t.Before(Earliest) && t.Before(Latest) }

@@ -29,17 +29,29 @@ type planFile struct {
 	} `json:"windows"`
 }
 
+// maxPlanBytes is the size over which a plan is refused: ten times that of 400
+// days.
+const maxPlanBytes = 64 << 20
+
 // ReadNeeds reads a plan's JSON and gives what its windows need: the bodies of
 // the triads and the round, or all bodies where it has neither.
 func ReadNeeds(r io.Reader) ([]Need, error) {
+	data, err := io.ReadAll(io.LimitReader(r, maxPlanBytes+1))
+	if err != nil {
+		return nil, err
+	}
+	if len(data) > maxPlanBytes {
+		return nil, fmt.Errorf("over %d MB (a plan is at most that)", maxPlanBytes>>20)
+	}
 	var f planFile
-	if err := json.NewDecoder(r).Decode(&f); err != nil {
+	if err := json.Unmarshal(data, &f); err != nil {
 		return nil, fmt.Errorf("not a plan: %w (JSON as gloam plan --json writes it)", err)
 	}
 	if f.Format != plan.Format {
 		return nil, fmt.Errorf("format %q (%s)", f.Format, plan.Format)
 	}
 	var needs []Need
+	var total time.Duration
 	for _, w := range f.Windows {
 		var names []string
 		for _, t := range w.Triads {
@@ -53,8 +65,9 @@ func ReadNeeds(r io.Reader) ([]Need, error) {
 				names = append(names, b.Body)
 			}
 		}
-		if !Serves(w.Begin) || !Serves(w.End) || w.End.Before(w.Begin) || w.End.Sub(w.Begin) > MaxHours*time.Hour {
-			return nil, fmt.Errorf("window %s: %v to %v (in order, %d to %d)", w.ID, w.Begin, w.End, Earliest.Year(), Latest.Year()-1)
+		total += w.End.Sub(w.Begin)
+		if !Serves(w.Begin) || !Serves(w.End) || w.End.Before(w.Begin) || total > MaxHours*time.Hour {
+			return nil, fmt.Errorf("window %s: %v to %v (in order, %d to %d, 400 days in all)", w.ID, w.Begin, w.End, Earliest.Year(), Latest.Year()-1)
 		}
 		bodies, err := distinct(names)
 		if err != nil {
