@@ -112,8 +112,7 @@ func (a Air) moonlight(moon Light, k, dimmed float64, h, zn unit.Angle) float64 
 	if moon.Altitude <= 0 {
 		return 0
 	}
-	phase := math.Abs(moon.Phase.Deg())
-	magnitude := -12.73 + 0.026*phase + 4e-9*math.Pow(phase, 4)
+	magnitude := moonMagnitude(math.Abs(moon.Phase.Deg()), meanMoonKm)
 	return scattered(magnitude, k, moon.distance(h, zn), airMass(moon.Altitude), dimmed)
 }
 

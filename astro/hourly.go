@@ -84,9 +84,8 @@ type Worked struct {
 // hour is that of Aries, and its SHA is added. The Sun's is shifted by half of
 // the v it has not, up to 0.16', as printed almanacs do (from memory).
 //
-// Against the place computed directly it is good to 0.3' for the Moon and 0.2'
-// for the rest: what is left of the Sun's missing v, and the unevenness of v and
-// d within the hour.
+// Against the place computed directly it is good to 0.04', for the Sun to 0.16':
+// what is left of its missing v, and the unevenness of v and d within the hour.
 func Work(b Body, t time.Time, deltaT func(time.Time) time.Duration) Worked {
 	hour := t.UTC().Truncate(time.Hour)
 	w := Worked{Time: t.UTC(), Hour: NewHourly(b, hour, deltaT), Direct: NewMoment(t, deltaT(t)).Place(b)}

@@ -38,5 +38,8 @@ var saturnPole = spherical(40.589*degree, 83.537*degree)
 // in the form of Krisciunas & Schaefer, PASP 103, 1033, 1991). Beyond a phase
 // angle of 150°, a thin crescent, it makes the Moon too bright by 0.5 or more.
 func moonMagnitude(phase, km float64) float64 {
-	return -12.73 + 0.026*phase + 4e-9*math.Pow(phase, 4) + 5*math.Log10(km/384400)
+	return -12.73 + 0.026*phase + 4e-9*math.Pow(phase, 4) + 5*math.Log10(km/meanMoonKm)
 }
+
+// meanMoonKm is the Moon's mean distance.
+const meanMoonKm = 384400

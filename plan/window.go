@@ -37,6 +37,10 @@ type Window struct {
 	PairFix          FixQuality // of the two best bodies; no Bodies where there are none
 }
 
+// shortestWindow is the length under which a window is none: a passage may begin
+// or end as the Sun crosses a limit.
+const shortestWindow = time.Second
+
 // windows finds every maximal span in which the Sun stands between the limits,
 // cut to the passage.
 func (s *sky) windows(set Settings) []Window {
@@ -52,6 +56,9 @@ func (s *sky) windows(set Settings) []Window {
 	var all []Window
 	for i := 1; i < len(marks); i++ {
 		begin, end := marks[i-1], marks[i]
+		if end.Sub(begin) < shortestWindow {
+			continue
+		}
 		if h := s.altitude(astro.Sun, middle(begin, end)); h > set.UpperSun || h < set.LowerSun {
 			continue
 		}

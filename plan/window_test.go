@@ -73,11 +73,13 @@ func TestWindowLimits(t *testing.T) {
 	for _, v := range readVoyages(t) {
 		s := newSky(v.passage, astro.DeltaT)
 		for _, w := range planOf(t, v.passage, set).Windows() {
-			cut := w.Begin.Equal(v.passage.Departure) || w.End.Equal(v.passage.Arrival)
+			cut := false
 			for _, at := range []time.Time{w.Begin, w.End} {
 				h := s.altitude(astro.Sun, at)
 				near := math.Min(math.Abs((h - set.UpperSun).Min()), math.Abs((h - set.LowerSun).Min()))
-				if near > 0.001 && !cut {
+				if at.Equal(v.passage.Departure) || at.Equal(v.passage.Arrival) {
+					cut = true
+				} else if near > 0.001 {
 					t.Errorf("%s %s: Sun at %.4f° at an end", v.name, w.ID, h.Deg())
 				}
 			}

@@ -140,9 +140,10 @@ func (t *text) worked(k astro.Worked) {
 	t.line("  %-30s %s computed directly %s", "Dec", fineDec(k.Dec), fineDec(k.Direct.Dec))
 }
 
-// towards is the pole to which a declination lies or goes.
+// towards is the pole to which a declination lies or goes; north where it rounds
+// to nothing.
 func towards(dec unit.Angle) rune {
-	if dec < 0 {
+	if dec.Min() <= -0.005 {
 		return 'S'
 	}
 	return 'N'
