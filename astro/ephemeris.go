@@ -118,7 +118,9 @@ func (f *frame) sample(p Place) sample {
 }
 
 // Place gives the place of a body at an instant of the span.
-func (e *Ephemeris) Place(b Body, t time.Time) Place { return e.place(e.bodies[b].at(t), e.sidereal(t)) }
+func (e *Ephemeris) Place(b Body, t time.Time) Place {
+	return e.place(e.bodies[b].at(t), e.sidereal(t))
+}
 
 // sidereal is mean sidereal time at an instant.
 func (e *Ephemeris) sidereal(t time.Time) float64 {

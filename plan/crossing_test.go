@@ -60,6 +60,9 @@ func TestCrossingsMissNone(t *testing.T) {
 		f := func(at time.Time) float64 { return math.Cos((hoursAfter(at)-top)*math.Pi/12) - level }
 		want := 0
 		for _, x := range []float64{top - near, top + near, top + 24 - near, top + 24 + near, top - 24 + near} {
+			if math.Abs(x) < 1e-6 || math.Abs(x-24) < 1e-6 {
+				t.Skip("on an end of the span, where either answer is right")
+			}
 			if x > 0 && x < 24 {
 				want++
 			}

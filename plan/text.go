@@ -63,13 +63,20 @@ func (t *text) strong(s string) string {
 	return s
 }
 
+// legsListed is how many legs a plan lists at most.
+const legsListed = 40
+
 func (t *text) voyage(pl *Plan) {
 	t.head(pl.Passage)
 	t.sextant(&pl.Settings)
 	t.line("Sky       bodies from %s to %s high, Sun from %s to %s", wholeDegrees(pl.Settings.LowestAltitude),
 		wholeDegrees(pl.Settings.HighestAltitude), wholeDegrees(pl.Settings.UpperSun), wholeDegrees(pl.Settings.LowerSun))
 	t.line("")
-	t.legs(pl.Passage)
+	if n := len(pl.Passage.Legs); n > legsListed {
+		t.line("%d legs; gloam route lists them.", n)
+	} else {
+		t.legs(pl.Passage)
+	}
 	t.notes(pl.Notes)
 }
 
@@ -86,17 +93,20 @@ func (t *text) dateTimes(at time.Time) string {
 
 func minuteOf(t time.Time) time.Time { return t.Round(time.Minute).UTC() }
 
-// spanText writes a duration in days and hours: "14 d 22 h"; a short one in
-// hours or minutes alone.
+// spanText writes a duration in days and hours: "14 d 22 h"; one of less than a
+// day in hours and minutes: "6 h 30 min".
 func spanText(d time.Duration) string {
-	hours := int(d.Round(time.Hour).Hours())
-	switch {
-	case d < time.Hour:
-		return fmt.Sprintf("%d min", int(d.Round(time.Minute).Minutes()))
-	case hours < 24:
-		return fmt.Sprintf("%d h", hours)
+	if hours := int(d.Round(time.Hour).Hours()); hours >= 24 {
+		return fmt.Sprintf("%d d %d h", hours/24, hours%24)
 	}
-	return fmt.Sprintf("%d d %d h", hours/24, hours%24)
+	minutes := int(d.Round(time.Minute).Minutes())
+	switch {
+	case minutes < 60:
+		return fmt.Sprintf("%d min", minutes)
+	case minutes%60 == 0:
+		return fmt.Sprintf("%d h", minutes/60)
+	}
+	return fmt.Sprintf("%d h %d min", minutes/60, minutes%60)
 }
 
 func (t *text) day(d *Day) {

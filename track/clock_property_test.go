@@ -75,7 +75,7 @@ func drawVoyage(t *rapid.T, lat, slowest, fastest float64) *Passage {
 		north := math.Max(-lat, math.Min(lat, place.Lat.Deg()+run*math.Cos(course)))
 		place = PositionFromDeg(north, place.Lon.Deg()+run*math.Sin(course)/place.Lat.Cos())
 	}
-	r, err := newRoute(vertices)
+	r, err := newRoute(vertices, len(vertices))
 	if err != nil {
 		t.Skip(err)
 	}

@@ -12,9 +12,6 @@ import (
 	"github.com/paulmach/orb"
 )
 
-// MaxRouteBytes is the size over which a route file is refused.
-const MaxRouteBytes = 16 << 20
-
 // waypointNM is how near a Point must lie to a vertex to name it.
 const waypointNM = 0.1
 
@@ -31,13 +28,9 @@ const waypointNM = 0.1
 // other kinds of geometry are passed over. Errors are of type *[Error], but
 // for those of r.
 func ReadGeoJSON(r io.Reader) (*Route, error) {
-	data, err := io.ReadAll(io.LimitReader(r, MaxRouteBytes+1))
+	data, err := io.ReadAll(limited(r))
 	if err != nil {
 		return nil, err
-	}
-	if len(data) > MaxRouteBytes {
-		return nil, &Error{"file", fmt.Sprintf("over %d MB", MaxRouteBytes>>20),
-			"a route file is at most that", "export the route alone, without tracks or charts"}
 	}
 	doc, err := decode(data)
 	if err != nil {
@@ -61,7 +54,7 @@ type object struct {
 }
 
 func decode(data []byte) (*object, error) {
-	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf"))
+	data = bytes.TrimPrefix(data, byteOrderMark)
 	var doc *object
 	if err := json.Unmarshal(data, &doc); err != nil {
 		return nil, jsonError(data, err)
@@ -198,7 +191,7 @@ func buildRoute(features []feature) (*Route, error) {
 	if err != nil {
 		return nil, err
 	}
-	r, err := newRoute(vertices)
+	r, err := newRoute(vertices, len(vertices))
 	if err != nil {
 		return nil, err
 	}

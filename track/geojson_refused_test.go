@@ -88,7 +88,7 @@ func TestReadGeoJSONRefuses(t *testing.T) {
 func TestReadGeoJSONTooLong(t *testing.T) {
 	spaces := iotest.DataErrReader(io.LimitReader(repeat(' '), MaxRouteBytes+1))
 	_, err := ReadGeoJSON(io.MultiReader(strings.NewReader(bareLine), spaces))
-	checkError(t, err, "file", "over 16 MB", "at most", "export the route alone")
+	checkError(t, err, "file", "over 96 MB", "at most", "export the route alone")
 }
 
 func TestReadGeoJSONPassesReadErrorOn(t *testing.T) {

@@ -1,11 +1,14 @@
 package track
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"slices"
+	"sort"
 
 	"github.com/paulmach/orb"
+	"github.com/soniakeys/unit"
 )
 
 // vertex is a waypoint as the file draws it, with the longitude it has there.
@@ -56,20 +59,41 @@ func (f *feature) parts() [][]vertex {
 // callAt gives each vertex the name and the stay of the first Point with a name
 // that lies on it.
 func callAt(parts [][]vertex, points []feature) error {
+	if len(points) > maxWaypoints {
+		return &Error{"file", fmt.Sprintf("%d points", len(points)), fmt.Sprintf("at most %d beside the line", maxWaypoints), "keep the points that name waypoints"}
+	}
+	var byLat []*vertex
+	for _, part := range parts {
+		for i := range part {
+			byLat = append(byLat, &part[i])
+		}
+	}
+	slices.SortStableFunc(byLat, func(a, b *vertex) int { return cmp.Compare(a.Lat, b.Lat) })
 	for _, f := range points {
 		call, err := f.call()
 		if err != nil {
 			return err
 		}
-		for _, part := range parts {
-			for i := range part {
-				if v := &part[i]; v.Name == "" && call.Name != "" && near(v.Position, call.Position, waypointNM) {
-					v.Name, v.Stay = call.Name, call.Stay
-				}
-			}
+		if call.Name != "" {
+			call.nameNear(byLat)
 		}
 	}
 	return nil
+}
+
+// nameNear gives a waypoint's name and stay to the unnamed vertices close to
+// it. They come in order of latitude.
+func (w *Waypoint) nameNear(byLat []*vertex) {
+	reach := unit.AngleFromMin(2 * waypointNM)
+	first := sort.Search(len(byLat), func(i int) bool { return byLat[i].Lat >= w.Lat-reach })
+	for _, v := range byLat[first:] {
+		if v.Lat > w.Lat+reach {
+			return
+		}
+		if v.Name == "" && near(v.Position, w.Position, waypointNM) {
+			v.Name, v.Stay = w.Name, w.Stay
+		}
+	}
 }
 
 // checkLongitudes lets a longitude pass ±180° only where the line runs there

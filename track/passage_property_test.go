@@ -24,7 +24,7 @@ func drawPassage(t *rapid.T, lat float64) *Passage {
 	for i := range vertices {
 		vertices[i].Position = drawPlace(t, lat)
 	}
-	r, err := newRoute(vertices)
+	r, err := newRoute(vertices, len(vertices))
 	if err != nil {
 		t.Skip(err) // all at one place
 	}

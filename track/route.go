@@ -41,19 +41,32 @@ type Route struct {
 	Notes     []string // what the reader passed over, in words
 }
 
-// newRoute checks the vertices and drops those that repeat their neighbour.
-func newRoute(vertices []Waypoint) (*Route, error) {
+// newRoute checks the vertices, drops those that repeat their neighbour, and
+// thins what is left where it is much. drawn is how many points the file has.
+func newRoute(vertices []Waypoint, drawn int) (*Route, error) {
 	r := &Route{}
 	for i, w := range vertices {
 		if err := checkLatitude(vertexPlace(i), w.Position); err != nil {
 			return nil, err
 		}
 		if n := len(r.Waypoints); n > 0 && near(r.Waypoints[n-1].Position, w.Position, repeatNM) {
-			r.Notes = append(r.Notes, fmt.Sprintf("%s repeats the one before it and is skipped", vertexPlace(i)))
+			if !w.timed() {
+				r.Notes = append(r.Notes, fmt.Sprintf("%s repeats the one before it and is skipped", vertexPlace(i)))
+			}
 			r.Waypoints[n-1].absorb(&w)
 			continue
 		}
 		r.Waypoints = append(r.Waypoints, w)
+	}
+	r.Notes = fewNotes(r.Notes)
+	if len(r.Waypoints) > thinnedOver {
+		r.Waypoints = thin(r.Waypoints)
+	}
+	if drawn > thinnedOver {
+		r.Notes = append(r.Notes, fmt.Sprintf("%d points are thinned to %d, none of them over %v NM off", drawn, len(r.Waypoints), ThinnedNM))
+	}
+	if n := len(r.Waypoints); n > maxWaypoints {
+		return nil, tooMany(maxWaypoints)
 	}
 	if len(r.Waypoints) < 2 {
 		return nil, &Error{
@@ -62,6 +75,15 @@ func newRoute(vertices []Waypoint) (*Route, error) {
 		}
 	}
 	return r, nil
+}
+
+// fewNotes keeps the first notes of many.
+func fewNotes(notes []string) []string {
+	const few = 3
+	if more := len(notes) - few; more > 1 {
+		return append(notes[:few], fmt.Sprintf("and so do %d more points", more))
+	}
+	return notes
 }
 
 // checkLatitude refuses a place too near a pole.

@@ -31,10 +31,10 @@ func newPlan(w world) *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "plan ROUTE",
 		Short: "Plan the star sights of a passage",
-		Long: "Reads a route (GeoJSON; - for standard input) and prints the plan: for each\n" +
-			"ship's date the twilights, the windows for star sights, the triads that give\n" +
-			"the best fix and what to set on the sextant. Flags win over the file's\n" +
-			"properties name, departure, speed_kn, sailing and eye_m.",
+		Long: "Reads a route (GeoJSON, GPX or RTZ; - for standard input) and prints the\n" +
+			"plan: for each ship's date the twilights, the windows for star sights, the\n" +
+			"triads that give the best fix and what to set on the sextant. Flags win over\n" +
+			"what the file says of schedule, sailing and height of eye.",
 		Example: "  gloam plan route.geojson --depart 2026-11-20T12:00Z --speed 6.5 --ics plan.ics",
 		Args:    func(cmd *cobra.Command, args []string) error { return usage(cobra.ExactArgs(1)(cmd, args)) },
 		RunE: func(cmd *cobra.Command, args []string) error {

@@ -54,7 +54,7 @@ func readRoute(file string, stdin io.Reader) (*track.Route, error) {
 		defer f.Close()
 		in = f
 	}
-	route, err := track.ReadGeoJSON(in)
+	route, err := track.Read(in)
 	if err != nil {
 		return nil, &fileError{file, err}
 	}
