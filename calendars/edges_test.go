@@ -141,7 +141,10 @@ func TestNamesStayInTheCalendarName(t *testing.T) {
 	if got := cal.one(t, "X-WR-CALNAME"); got != `Quillfish of "Ness" Bay - sights` {
 		t.Errorf("calendar's name %q", got)
 	}
-	if data := string(written(t, p, usual)); strings.Count(data, "Quillfish") != 1 || strings.Contains(data, waypoint) {
+	if cal.one(t, "NAME") != cal.one(t, "X-WR-CALNAME") {
+		t.Errorf("two names, %q and another", cal.one(t, "NAME"))
+	}
+	if data := string(written(t, p, usual)); strings.Count(data, "Quillfish") != 2 || strings.Contains(data, waypoint) {
 		t.Error("names of the voyage stand outside the calendar's name")
 	}
 }

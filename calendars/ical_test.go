@@ -133,4 +133,4 @@ func parsed(tb testing.TB, p *plan.Plan, opt Options) *component {
 	return cal
 }
 
-var usual = Options{Alarm: 20 * time.Minute, Stamp: stamp}
+var usual = Options{Alarms: []time.Duration{20 * time.Minute}, Stamp: stamp}

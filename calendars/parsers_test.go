@@ -44,7 +44,7 @@ func TestIndependentParsers(t *testing.T) {
 				e, w := plain.parts[i], windows[i]
 				want := understood{
 					e.one(t, "UID"), whole(w.Begin).Format("20060102T150405Z"), whole(w.End).Format("20060102T150405Z"),
-					summary(&w), unescape(e.one(t, "DESCRIPTION")), []int{-int((20 * time.Minute).Seconds())},
+					w.Title(), unescape(e.one(t, "DESCRIPTION")), []int{-int((20 * time.Minute).Seconds())},
 				}
 				if g.UID != want.UID || g.Start != want.Start || g.End != want.End || g.Summary != want.Summary ||
 					g.Description != want.Description || !slices.Equal(g.Alarm, want.Alarm) {

@@ -7,18 +7,9 @@ import (
 	"unicode"
 
 	"gloam/plan"
+	"gloam/track"
 	"gloam/track/dm"
 )
-
-// summary is the event's title: the kind and the bodies of the best triad, or
-// what the window lacks.
-func summary(w *plan.Window) string {
-	kind := capital(w.Kind.Words())
-	if len(w.Triads) > 0 {
-		return kind + ": " + w.Triads[0].Names()
-	}
-	return kind + ": " + w.Comment()
-}
 
 // text gathers the lines of a description, kept short for a phone.
 type text struct {
@@ -30,7 +21,7 @@ func (t *text) line(format string, args ...any) { fmt.Fprintf(t, format+"\n", ar
 
 // times gives an instant by the ship's clock and in UTC.
 func (t *text) times(at time.Time) string {
-	at = at.Round(time.Minute)
+	at = plan.Minute(at, t.plan.Clock.At)
 	return t.plan.Clock.At(at).Format("15:04") + " ship " + at.UTC().Format("15:04") + " UTC"
 }
 
@@ -51,14 +42,46 @@ func description(p *plan.Plan, d *plan.Day, w *plan.Window) string {
 	}
 	t.line("Sun from %.4g° to %.4g°", p.Settings.UpperSun.Deg(), p.Settings.LowerSun.Deg())
 	t.line("DR %v", w.Fix.Position)
-	t.line("Course %s, %.1f kn", dm.Bearing(w.Fix.Course), w.Fix.SpeedKn)
+	t.way(w.Fix)
 	t.line("")
 	t.sun(w)
 	t.bodies(w)
+	t.cautions()
+	return strings.TrimSpace(t.String())
+}
+
+// way tells how the ship goes.
+func (t *text) way(fix track.Fix) {
+	if fix.SpeedKn == 0 {
+		t.line("Lying still, heading %s as she came", dm.Bearing(fix.Course))
+		return
+	}
+	t.line("Course %s, %.1f kn", dm.Bearing(fix.Course), fix.SpeedKn)
+}
+
+func (t *text) cautions() {
 	t.line("")
 	for _, c := range plan.Cautions {
 		t.line("%s", c)
 	}
+}
+
+// itemDescription tells of an item that is no star window.
+func itemDescription(p *plan.Plan, d *plan.Day, item *plan.Item) string {
+	t := &text{plan: p}
+	t.line("%s", d.Date.Format("Monday 2 January 2006"))
+	t.line("Ship's time %s", plan.ZoneText(d.Offset))
+	t.line("")
+	if item.Kind != plan.Daily {
+		t.line("Best  %s", t.times(item.Best))
+		t.line("DR %v", item.Fix.Position)
+		t.way(item.Fix)
+		t.line("")
+	}
+	for _, w := range item.Words {
+		t.line("%s", w)
+	}
+	t.cautions()
 	return strings.TrimSpace(t.String())
 }
 
@@ -68,10 +91,7 @@ func none(p *plan.Plan) string {
 	for _, d := range p.Days {
 		t.line("%s: %s", d.Date.Format("2 January"), d.NoWindow)
 	}
-	t.line("")
-	for _, c := range plan.Cautions {
-		t.line("%s", c)
-	}
+	t.cautions()
 	return t.String()
 }
 

@@ -16,91 +16,65 @@ import (
 
 // Options are what a calendar depends on beside the plan.
 type Options struct {
-	Alarm time.Duration // before a window begins; 0 for no alarm, never below 0
-	Stamp time.Time     // DTSTAMP of every event
+	Alarms  []time.Duration // before an event begins, each a second at least
+	Busy    bool            // events take up time, where others are planned around them
+	Include []plan.ItemKind // what becomes an event; star windows where it is empty
+	Stamp   time.Time       // DTSTAMP of what is written, and the instant before which all is past
 }
 
-const productID = "-//gloam//voyage sights//EN"
+func (o *Options) kinds() []plan.ItemKind {
+	if len(o.Include) == 0 {
+		return []plan.ItemKind{plan.Stars}
+	}
+	return o.Include
+}
 
-// Write writes the plan's windows as a calendar. The same plan and options
-// give the same bytes. A window keeps its UID when the voyage, known by its
-// name or where it has none by its ends, is planned again and the window falls
-// on the same ship's date.
+func (o *Options) check() error {
+	for _, a := range o.Alarms {
+		if a < time.Second {
+			return fmt.Errorf("alarm %v before the event (a second or more)", a)
+		}
+	}
+	return nil
+}
+
+const (
+	productID = "-//gloam//voyage sights//EN"
+	uidEnd    = "@gloam"
+	color     = "midnightblue" // a name of CSS, as RFC 7986 wants it
+	refresh   = "P1D"          // how often to look for a new one, where the file lies on a server
+)
+
+// Write writes the plan as a calendar. The same plan and options give the same
+// bytes. An event keeps its UID when the voyage, known by its name or where it
+// has none by its ends, is planned again and the event falls on the same ship's
+// date.
 func Write(w io.Writer, p *plan.Plan, opt Options) error {
-	if opt.Alarm < 0 {
-		return fmt.Errorf("alarm %v before the window (0 or more)", opt.Alarm)
+	data, err := serialise(p, opt)
+	if err != nil {
+		return err
+	}
+	_, err = w.Write(data)
+	return err
+}
+
+func serialise(p *plan.Plan, opt Options) ([]byte, error) {
+	if err := opt.check(); err != nil {
+		return nil, err
 	}
 	cal := ics.NewCalendarFor("gloam")
 	cal.SetProductId(productID)
 	cal.SetCalscale("GREGORIAN")
-	cal.SetXWRCalName(plainName(p.Passage))
-	voyage := voyageKey(p.Passage)
-	for i := range p.Days {
-		for j := range p.Days[i].Windows {
-			addEvent(cal, p, &p.Days[i], &p.Days[i].Windows[j], voyage, opt)
-		}
-	}
-	if len(cal.Events()) == 0 {
-		addNone(cal, p, voyage, opt)
+	cal.SetName(plainName(p.Passage)) // NAME, and X-WR-CALNAME for older readers
+	cal.SetColor(color)
+	cal.SetRefreshInterval(refresh)
+	for _, e := range entries(p, opt) {
+		e.event(cal, voyageKey(p.Passage), opt)
 	}
 	var b bytes.Buffer
-	if err := cal.SerializeTo(&b, ics.WithNewLineWindows); err != nil {
-		return err
-	}
-	_, err := w.Write(b.Bytes())
-	return err
+	err := cal.SerializeTo(&b, ics.WithNewLineWindows)
+	return b.Bytes(), err
 }
-
-// addEvent adds the event of one window.
-func addEvent(cal *ics.Calendar, p *plan.Plan, d *plan.Day, w *plan.Window, voyage string, opt Options) {
-	begin, end := whole(w.Begin), whole(w.End)
-	if !end.After(begin) {
-		end = begin.Add(time.Second)
-	}
-	e := cal.AddEvent(w.ID + "-" + voyage + "@gloam")
-	e.SetDtStampTime(opt.Stamp)
-	e.SetStartAt(begin)
-	e.SetEndAt(end)
-	e.SetSequence(0)
-	e.SetSummary(summary(w))
-	e.SetDescription(clean(description(p, d, w)))
-	e.SetLocation(w.Fix.Position.String())
-	e.SetGeo(fmt.Sprintf("%.6f", w.Fix.Lat.Deg()), fmt.Sprintf("%.6f", w.Fix.Lon.Deg()))
-	e.AddCategory("SIGHTS")
-	e.AddCategory(w.Kind.Words())
-	e.SetTimeTransparency(ics.TransparencyTransparent)
-	if opt.Alarm >= time.Second {
-		a := e.AddAlarm()
-		a.SetAction(ics.ActionDisplay)
-		a.SetTrigger(before(opt.Alarm))
-		a.SetDescription(summary(w))
-	}
-}
-
-// addNone adds the one event of a voyage without windows, since a calendar must
-// hold something (RFC 5545, 3.6): it lasts the voyage and says why.
-func addNone(cal *ics.Calendar, p *plan.Plan, voyage string, opt Options) {
-	e := cal.AddEvent("no-window-" + voyage + "@gloam")
-	e.SetDtStampTime(opt.Stamp)
-	e.SetStartAt(whole(p.Passage.Departure))
-	e.SetEndAt(whole(p.Passage.Arrival).Add(time.Second))
-	e.SetSequence(0)
-	e.SetSummary("No star window on this voyage")
-	e.SetDescription(clean(none(p)))
-	e.AddCategory("sights")
-	e.SetTimeTransparency(ics.TransparencyTransparent)
-}
-
-// before writes a duration as a trigger ahead of the event's start.
-func before(d time.Duration) string {
-	seconds := int(d.Round(time.Second).Seconds())
-	if seconds%60 == 0 {
-		return fmt.Sprintf("-PT%dM", seconds/60)
-	}
-	return fmt.Sprintf("-PT%dS", seconds)
-}
-
-func whole(t time.Time) time.Time { return t.UTC().Round(time.Second) }
 
 // voyageKey tells voyages apart in a UID: a hash of the name, or of the ends
 // where there is none.
@@ -110,8 +84,10 @@ func voyageKey(p *track.Passage) string {
 		from, to := p.Legs[0].From, p.Legs[len(p.Legs)-1].To
 		key = fmt.Sprintf("%.2f %.2f %.2f %.2f", from.Lat.Deg(), from.Lon.Deg(), to.Lat.Deg(), to.Lon.Deg())
 	}
-	return fmt.Sprintf("%x", sha256.Sum256([]byte(key)))[:12]
+	return shortHash(key)
 }
+
+func shortHash(s string) string { return fmt.Sprintf("%x", sha256.Sum256([]byte(s)))[:12] }
 
 // plainName is the calendar's name. Readers differ in how they take escaped
 // characters there, so it has none.

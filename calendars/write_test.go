@@ -15,8 +15,8 @@ import (
 
 // allowed are the properties this package writes, and no others.
 var allowed = map[string]string{
-	"VCALENDAR": "VERSION PRODID CALSCALE X-WR-CALNAME",
-	"VEVENT":    "UID DTSTAMP DTSTART DTEND SEQUENCE SUMMARY DESCRIPTION LOCATION GEO CATEGORIES TRANSP",
+	"VCALENDAR": "VERSION PRODID CALSCALE X-WR-CALNAME NAME COLOR REFRESH-INTERVAL",
+	"VEVENT":    "UID DTSTAMP DTSTART DTEND SEQUENCE SUMMARY DESCRIPTION LOCATION GEO CATEGORIES TRANSP X-GLOAM-STATE X-GLOAM-TEXT",
 	"VALARM":    "ACTION TRIGGER DESCRIPTION",
 }
 
@@ -26,7 +26,7 @@ func wellFormed(cal *component, events int) error {
 	uids := map[string]bool{}
 	check := func(c *component) error {
 		for _, p := range c.lines {
-			if !strings.Contains(" "+allowed[c.kind]+" ", " "+p.name+" ") || p.params != "" {
+			if !strings.Contains(" "+allowed[c.kind]+" ", " "+p.name+" ") || p.params != "" && p.name+";"+p.params != "REFRESH-INTERVAL;VALUE=DURATION" {
 				return fmt.Errorf("%s has %s;%s:%s", c.kind, p.name, p.params, p.value)
 			}
 		}
@@ -109,13 +109,19 @@ func TestEventsFollowThePlan(t *testing.T) {
 
 func TestAlarms(t *testing.T) {
 	p := voyage(t, "Yawl Sorrel", "", "2027-02-10T12:00:00Z")
-	for alarm, want := range map[time.Duration]string{0: "", 90 * time.Second: "-PT90S", 2 * time.Hour: "-PT120M"} {
-		e := parsed(t, p, Options{Alarm: alarm, Stamp: stamp}).parts[0]
-		if want == "" && len(e.parts) > 0 || want != "" && e.parts[0].one(t, "TRIGGER") != want {
-			t.Errorf("alarm %v: %d alarms, want %q", alarm, len(e.parts), want)
+	for _, c := range []struct {
+		alarms []time.Duration
+		want   string
+	}{{nil, ""}, {[]time.Duration{90 * time.Second}, "-PT90S"}, {[]time.Duration{2 * time.Hour, 20 * time.Minute}, "-PT120M -PT20M"}} {
+		var got []string
+		for _, a := range parsed(t, p, Options{Alarms: c.alarms, Stamp: stamp}).parts[0].parts {
+			got = append(got, a.one(t, "TRIGGER"))
+		}
+		if strings.Join(got, " ") != c.want {
+			t.Errorf("alarms %v: %q, want %q", c.alarms, got, c.want)
 		}
 	}
-	if err := Write(&bytes.Buffer{}, p, Options{Alarm: -time.Minute}); err == nil {
+	if err := Write(&bytes.Buffer{}, p, Options{Alarms: []time.Duration{-time.Minute}}); err == nil {
 		t.Error("an alarm after the beginning was taken")
 	}
 }

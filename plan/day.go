@@ -21,6 +21,8 @@ type Day struct {
 	Moon     MoonPhase
 	NoWindow string   // why the day has no window; empty where it has one
 	Remains  []Remain // what there is to shoot on a day without a window
+
+	Programme []Item // all that is worth doing, in order of time
 }
 
 // MoonPhase is how the Moon looks.
@@ -62,8 +64,10 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 			day.NoWindow = s.noWindow(day, set, clock, every)
 			day.Remains = s.remains(day, set)
 		}
+		day.Programme = s.programme(&day, clock)
 		all = append(all, day)
 	}
+	nameItems(all)
 	return all
 }
 

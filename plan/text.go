@@ -130,13 +130,16 @@ func (t *text) day(d *Day) {
 	}
 }
 
-// minute rounds an instant, but not over into another ship's date.
-func (t *text) minute(at time.Time) time.Time {
-	if r := minuteOf(at); t.shipTime(r).Day() == t.shipTime(at).Day() {
+// Minute rounds an instant to a minute, but not over into another ship's date;
+// shipTime gives an instant by the ship's clock.
+func Minute(at time.Time, shipTime func(time.Time) time.Time) time.Time {
+	if r := minuteOf(at); shipTime(r).Day() == shipTime(at).Day() {
 		return r
 	}
 	return at.Truncate(time.Minute).UTC()
 }
+
+func (t *text) minute(at time.Time) time.Time { return Minute(at, t.shipTime) }
 
 func (t *text) clock(at time.Time) time.Time { return t.shipTime(t.minute(at)) }
 func (t *text) ship(at time.Time) string     { return t.clock(at).Format("15:04") }

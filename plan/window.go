@@ -1,7 +1,6 @@
 package plan
 
 import (
-	"fmt"
 	"sort"
 	"time"
 
@@ -98,10 +97,6 @@ func nameWindows(windows []Window, clock *track.Clock) {
 	seen := map[string]int{}
 	for i := range windows {
 		w := &windows[i]
-		w.ID = clock.Day(w.Begin).Date.Format(time.DateOnly) + "-" + string(w.Kind)
-		seen[w.ID]++
-		if n := seen[w.ID]; n > 1 {
-			w.ID = fmt.Sprintf("%s-%d", w.ID, n)
-		}
+		w.ID = numbered(seen, clock.Day(w.Begin).Date.Format(time.DateOnly)+"-"+string(w.Kind))
 	}
 }

@@ -22,8 +22,8 @@ import (
 type planFlags struct {
 	settingsFlags
 	voyageFlags
-	alarm     time.Duration
-	ics, json string
+	calendarFlags
+	json string
 }
 
 func newPlan(w world) *cobra.Command {
@@ -50,19 +50,22 @@ func (f *planFlags) define(cmd *cobra.Command) {
 	flags := cmd.Flags()
 	flags.SortFlags = false
 	f.voyageFlags.define(cmd)
-	flags.DurationVar(&f.alarm, "alarm", 20*time.Minute, "calendar alarm before each window; 0 for none")
-	flags.StringVar(&f.ics, "ics", "", "write the calendar to this file (- for standard output, alone)")
+	f.calendarFlags.define(cmd)
 	flags.StringVar(&f.json, "json", "", "write the plan as JSON to this file (- for standard output, alone)")
 	f.settingsFlags.define(cmd)
 }
 
 // run makes the plan, then writes the files, then prints the text.
 func (f *planFlags) run(file string, w world) error {
-	if err := f.check(file); err != nil {
-		return err
-	}
 	stamp, err := stampTime(w)
 	if err != nil {
+		return err
+	}
+	opt, err := f.options(stamp)
+	if err != nil {
+		return err
+	}
+	if err := f.check(file); err != nil {
 		return err
 	}
 	route, err := readRoute(file, w.in)
@@ -73,7 +76,7 @@ func (f *planFlags) run(file string, w world) error {
 	if err != nil {
 		return err
 	}
-	outputs, err := f.outputs(p, stamp, w)
+	outputs, err := f.outputs(p, opt, w)
 	if err != nil {
 		return err
 	}
@@ -101,16 +104,17 @@ func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
 
 // check refuses outputs that would overwrite each other or the route.
 func (f *planFlags) check(route string) error {
-	switch {
-	case f.alarm < 0:
-		return usage(fmt.Errorf("--alarm %v (0 or more, as 20m)", f.alarm))
-	case sameOutput(f.ics, f.json):
-		return usage(errors.New("--ics and --json name the same output"))
+	calendar, flag := f.ics, "--ics"
+	if f.update != "" {
+		calendar, flag = f.update, "--update"
 	}
-	for flag, path := range map[string]string{"--ics": f.ics, "--json": f.json} {
-		if sameFile(path, route) {
-			return usage(fmt.Errorf("%s names the route file, which would be lost", flag))
-		}
+	switch {
+	case sameOutput(calendar, f.json):
+		return usage(fmt.Errorf("%s and --json name the same output", flag))
+	case sameFile(calendar, route):
+		return usage(fmt.Errorf("%s names the route file, which would be lost", flag))
+	case sameFile(f.json, route):
+		return usage(errors.New("--json names the route file, which would be lost"))
 	}
 	return nil
 }
@@ -130,8 +134,7 @@ func stampTime(w world) (time.Time, error) {
 
 // outputs prints the plan in all the forms asked for, at the same time; the
 // text comes last and is left out where standard output is taken.
-func (f *planFlags) outputs(p *plan.Plan, stamp time.Time, w world) ([]output, error) {
-	opt := calendars.Options{Alarm: f.alarm, Stamp: stamp}
+func (f *planFlags) outputs(p *plan.Plan, opt calendars.Options, w world) ([]output, error) {
 	var all []output
 	var group errgroup.Group
 	add := func(path string, write func(io.Writer) error) {
@@ -142,10 +145,23 @@ func (f *planFlags) outputs(p *plan.Plan, stamp time.Time, w world) ([]output, e
 		all = append(all, output{path, b})
 		group.Go(func() error { return write(b) })
 	}
-	add(f.ics, func(b io.Writer) error { return calendars.Write(b, p, opt) })
+	add(f.ics, calendarWriter(p, opt))
 	add(f.json, p.WriteJSON)
+	var changes calendars.Changes
+	if f.update != "" {
+		b, found, err := f.updated(p, opt)
+		if err != nil {
+			return nil, err
+		}
+		all, changes = append(all, output{f.update, b}), found
+	}
 	if f.ics != "-" && f.json != "-" {
-		add("-", func(b io.Writer) error { return p.WriteText(b, bold(w)) })
+		add("-", func(b io.Writer) error {
+			if err := p.WriteText(b, bold(w)); err != nil || f.update == "" {
+				return err
+			}
+			return changes.WriteText(b, p.Clock.At)
+		})
 	}
 	return all, group.Wait()
 }
