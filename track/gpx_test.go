@@ -64,6 +64,7 @@ var badXML = []struct{ name, in, place, met, allowed, hint string }{
 	{"another document", `<html/>`, "root element", "html", "gpx of http://www.topografix.com/GPX/1/1, or route of http://www.cirm.org/RTZ/1/0", "export"},
 	{"another namespace", `<gpx xmlns="urn:other"/>`, "element gpx", "namespace urn:other", "http://www.topografix.com/GPX/1/1 or", "export"},
 	{"latin-1", `<?xml version="1.0" encoding="ISO-8859-1"?><gpx/>`, "file", `encoding "ISO-8859-1"`, "UTF-8", "export"},
+	{"XML 1.1", `<?xml version="1.1"?><gpx/>`, "file", `unsupported version "1.1"`, "XML 1.0", "export"},
 	{"two roots", `<gpx><rte><rtept lat="0" lon="0"/><rtept lat="1" lon="0"/></rte></gpx><gpx/>`, "file", "a second root element", "one", "export"},
 	{"deep", `<gpx>` + strings.Repeat("<a>", 100), "file", "elements nested deeper", "32", "export"},
 	{"UTF-16", "\xff\xfe<\x00g\x00", "file", "UTF-16", "UTF-8", "save"},

@@ -95,8 +95,8 @@ func (x *xmlReader) token() (xml.Token, error) {
 	switch d, isDirective := t.(xml.Directive); {
 	case errors.As(err, &syntax):
 		return nil, &Error{fmt.Sprintf("line %d", syntax.Line), shorten(syntax.Msg), "XML", "check that the file is whole and unshortened"}
-	case err != nil && strings.HasPrefix(err.Error(), "xml: encoding"):
-		return nil, x.refuse("file", shorten(strings.TrimPrefix(err.Error(), "xml: ")), "UTF-8")
+	case err != nil && strings.HasPrefix(err.Error(), "xml: "): // encoding or version
+		return nil, x.refuse("file", shorten(strings.TrimPrefix(err.Error(), "xml: ")), "XML 1.0 in UTF-8")
 	case isDirective:
 		return nil, x.refuse("file", "<!"+shorten(string(d))+">", "no document type: a route needs none")
 	}
