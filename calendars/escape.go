@@ -35,7 +35,7 @@ func newLine(name, value string) item {
 // what a user added among them is known from them.
 var ownLines = regexp.MustCompile(`^(Ship's time |(Begin|Best|End|Use|until) +\d|Mind: |Sun from |DR |Course |Lying still|Best: |Gaps |Expected error|95 % ellipse|Round, ship's time|At best: |` +
 	`(Sunrise|Sunset|Civil|Nautical|Moonrise|Moonset|Meridian) |\d\d:\d\d:\d\d |(Morning|Evening|Midnight|Midday) stars: |Sun |` +
-	`(Mon|Tues|Wednes|Thurs|Fri|Satur|Sun)day \d+ \pL+ \d{4}$|[A-Z][\pL' ]* -?\d.* Zn |Nothing to shoot|One body only|Two bodies only|Time for \d)`)
+	`(Mon|Tues|Wednes|Thurs|Fri|Satur|Sun)day \d+ \pL+ \d{4}$|[A-Z][\pL' ]* -?\d.* Zn |Greatest altitude|Sun (north|south) of|Only |With |This line alone|Lines cross|Set the preset|Never sweep|Either limb|true |Amplitude |Variation not|Doubtful|Errors are|The Sun |Nothing to shoot|One body only|Two bodies only|Time for \d)`)
 
 func isOurs(l string) bool { return ownLines.MatchString(l) }
 

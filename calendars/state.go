@@ -6,8 +6,6 @@ import (
 	"strconv"
 	"strings"
 	"time"
-
-	"gloam/plan"
 )
 
 // The properties in which an event keeps what it was when it was written: what
@@ -38,7 +36,7 @@ func (e *entry) state() state {
 		s.triad = w.Triads[0].Names()
 	}
 	for _, r := range e.item.Sights {
-		name := plan.Candidate{Body: r.Body, Limb: r.Limb}.Label()
+		name := r.Label()
 		s.sights[name] = r.Preset.Min()
 		s.order = append(s.order, name)
 	}

@@ -73,10 +73,18 @@ func itemDescription(p *plan.Plan, d *plan.Day, item *plan.Item) string {
 	t.line("Ship's time %s", plan.ZoneText(d.Offset))
 	t.line("")
 	if item.Kind != plan.Daily {
+		t.line("Begin %s", t.times(item.Begin))
 		t.line("Best  %s", t.times(item.Best))
+		t.line("End   %s", t.times(item.End))
 		t.line("DR %v", item.Fix.Position)
 		t.way(item.Fix)
 		t.line("")
+	}
+	if len(item.Sights) > 0 {
+		t.line("Ship's time: set Hs, Zn, bow")
+	}
+	for i := range item.Sights {
+		t.sight(&item.Sights[i])
 	}
 	for _, w := range item.Words {
 		t.line("%s", w)
@@ -125,9 +133,8 @@ func (t *text) bodies(w *plan.Window) {
 	if len(w.Round) > 0 {
 		t.line("Round, ship's time: set Hs, Zn, bow")
 	}
-	for _, r := range w.Round {
-		label := plan.Candidate{Body: r.Body, Limb: r.Limb}.Label()
-		t.line("%s %s %s Zn %s bow %s", t.plan.Clock.At(r.Time).Format("15:04:05"), label, dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative))
+	for i := range w.Round {
+		t.sight(&w.Round[i])
 	}
 	if len(w.Bodies) == 0 {
 		return
@@ -139,6 +146,11 @@ func (t *text) bodies(w *plan.Window) {
 			t.line("%s %s Zn %s (%s, %.1f)", c.Label(), dm.Altitude(c.Preset), dm.Bearing(c.Azimuth), dm.Altitude(c.Altitude), c.Magnitude)
 		}
 	}
+}
+
+// sight prints what to set when.
+func (t *text) sight(r *plan.RoundSight) {
+	t.line("%s %s %s Zn %s bow %s", t.plan.Clock.At(r.Time).Format("15:04:05"), r.Label(), dm.Altitude(r.Preset), dm.Bearing(r.Azimuth), dm.Bearing(r.Relative))
 }
 
 var lineEnds = strings.NewReplacer("\r\n", "\n", "\r", "\n", "\u0085", "\n", "\u2028", "\n", "\u2029", "\n")

@@ -60,7 +60,7 @@ func BenchmarkWriteText(b *testing.B) {
 	p := planOf(b, longPassage(b, 15), DefaultSettings())
 	b.ReportAllocs()
 	for b.Loop() {
-		if err := p.WriteText(io.Discard, false); err != nil {
+		if err := p.WriteText(io.Discard, UsualKinds, false); err != nil {
 			b.Fatal(err)
 		}
 	}
@@ -70,7 +70,7 @@ func BenchmarkWriteJSON(b *testing.B) {
 	p := planOf(b, longPassage(b, 15), DefaultSettings())
 	b.ReportAllocs()
 	for b.Loop() {
-		if err := p.WriteJSON(io.Discard); err != nil {
+		if err := p.WriteJSON(io.Discard, UsualKinds); err != nil {
 			b.Fatal(err)
 		}
 	}

@@ -18,6 +18,7 @@ type Candidate struct {
 	astro.Place
 	Altitude, Azimuth unit.Angle // Hc and Zn
 	Limb              astro.Limb // the one to bring to the horizon
+	EitherLimb        bool       // the other serves as well, with its own preset
 	Preset            unit.Angle // Hs to set on the sextant
 	Error             unit.Angle // standard error of the sight
 	From, To          time.Time  // the span of the window in which it can be shot
@@ -47,6 +48,7 @@ func (set *Settings) candidate(sky astro.Sky, b astro.Body, at track.Position) C
 	c.Altitude, c.Azimuth = p.From(at.Lat, at.Lon)
 	if b == astro.Moon {
 		c.Limb = astro.BrightLimb(sky, b, at.Lat, at.Lon)
+		c.EitherLimb = astro.EitherLimb(sky, at.Lat, at.Lon)
 	}
 	c.Preset = set.Preset(c.Altitude, p, c.Limb)
 	c.Error = set.sightError(c.Altitude)

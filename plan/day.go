@@ -64,10 +64,9 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 			day.NoWindow = s.noWindow(day, set, clock, every)
 			day.Remains = s.remains(day, set)
 		}
-		day.Programme = s.programme(&day, clock)
 		all = append(all, day)
 	}
-	nameItems(all)
+	s.programmes(all, set, clock)
 	return all
 }
 
@@ -102,10 +101,6 @@ func (s *sky) noWindow(d Day, set Settings, clock *track.Clock, every []Window) 
 }
 
 func wholeDegrees(a unit.Angle) string { return fmt.Sprintf("%.4g°", a.Deg()) }
-
-// venusElongation is how far Venus must stand from the Sun to be looked for by
-// day (common practice, no published source).
-var venusElongation = unit.AngleFromDeg(20)
 
 // remains lists Sun, Moon and Venus where they come between the altitude
 // limits, with the instant they stand highest below the upper one.

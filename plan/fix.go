@@ -43,22 +43,26 @@ func (a information) add(b information) information {
 
 // position is what is known of the position alone, the common error
 // marginalised, times a factor that saves a division; and the determinant of
-// that: not above zero where the sights do not fix a position. weight is 1/s² of
-// the common error's standard error s in minutes, +Inf where there is none.
+// that, 0 where the sights do not fix a position. weight is 1/s² of the common
+// error's standard error s in minutes, +Inf where there is none.
 func (a *information) position(weight float64) (cc, cs, ss, factor, det float64) {
-	if math.IsInf(weight, 1) {
-		return a.cc, a.cs, a.ss, 1, a.cc*a.ss - a.cs*a.cs - 1e-12*a.w*a.w
+	cc, cs, ss, factor = a.cc, a.cs, a.ss, 1
+	if !math.IsInf(weight, 1) {
+		factor = a.w + weight
+		cc, cs, ss = a.cc*factor-a.c*a.c, a.cs*factor-a.c*a.s, a.ss*factor-a.s*a.s
 	}
-	f := a.w + weight
-	cc, cs, ss = a.cc*f-a.c*a.c, a.cs*f-a.c*a.s, a.ss*f-a.s*a.s
-	return cc, cs, ss, f, cc*ss - cs*cs - 1e-12*a.w*a.w*f*f
+	det = cc*ss - cs*cs
+	if w := a.w * factor; det <= 1e-12*w*w {
+		det = 0
+	}
+	return cc, cs, ss, factor, det
 }
 
 // covariance is that of the position; where the sights do not fix one its
 // entries are +Inf.
 func (a *information) covariance(weight float64) Covariance {
 	cc, cs, ss, f, det := a.position(weight)
-	if det <= 0 {
+	if det == 0 {
 		return Covariance{math.Inf(1), 0, math.Inf(1)}
 	}
 	return Covariance{NN: ss * f / det, NE: -cs * f / det, EE: cc * f / det}
@@ -67,7 +71,7 @@ func (a *information) covariance(weight float64) Covariance {
 // square is the trace of the covariance: the expected error squared, in NM².
 func (a *information) square(weight float64) float64 {
 	cc, _, ss, f, det := a.position(weight)
-	if det <= 0 {
+	if det == 0 {
 		return math.Inf(1)
 	}
 	return (cc + ss) * f / det

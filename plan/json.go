@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"io"
 	"math"
+	"slices"
 	"time"
 
 	"gloam/astro"
@@ -17,8 +18,9 @@ const Format = "gloam/plan/1"
 // Version is gloam's own.
 const Version = "0.1.0"
 
-// WriteJSON writes the plan as JSON of the format [Format], one object.
-func (p *Plan) WriteJSON(w io.Writer) error {
+// WriteJSON writes the plan as JSON of the format [Format], one object, with the
+// kinds asked for in the days' programmes.
+func (p *Plan) WriteJSON(w io.Writer, kinds []ItemKind) error {
 	enc := json.NewEncoder(w)
 	enc.SetEscapeHTML(false)
 	enc.SetIndent("", " ")
@@ -28,7 +30,7 @@ func (p *Plan) WriteJSON(w io.Writer) error {
 		Observer: p.Settings.json(), Choices: p.Settings.choices(),
 		Events:   each(p.Events(), p.eventJSON),
 		Windows:  each(p.Windows(), p.windowJSON),
-		Days:     each(p.Days, dayJSON),
+		Days:     each(p.Days, func(d Day) jsonDay { return dayJSON(d, kinds) }),
 		Notes:    append([]string{}, p.Notes...),
 		Cautions: Cautions,
 	})
@@ -134,10 +136,41 @@ func bodyJSON(c Candidate) jsonBody {
 
 func triadJSON(t Triad) *jsonQuality { return qualityJSON(t.FixQuality) }
 
-func dayJSON(d Day) jsonDay {
+func itemJSON(m Item) jsonItem {
+	j := jsonItem{
+		ID: m.ID, Kind: m.Kind, Title: m.Title, Begin: utc(m.Begin), Best: utc(m.Best), End: utc(m.End), Lat: deg(m.Fix.Lat), Lon: east(m.Fix.Lon),
+		Bodies: []string{}, Sights: each(m.Sights, sightJSON), Checks: each(m.Checks, checkJSON), Error: miles(m.ExpectedNM), Words: append([]string{}, m.Words...),
+	}
+	for _, r := range m.Sights {
+		j.Bodies = append(j.Bodies, r.Body.String())
+	}
+	for _, c := range m.Checks {
+		j.Bodies = append(j.Bodies, c.Body.String())
+	}
+	if m.Quality != nil {
+		j.Fix = qualityJSON(*m.Quality)
+	}
+	return j
+}
+
+func checkJSON(c Check) jsonCheck {
+	return jsonCheck{
+		Body: c.Body.String(), Time: utc(c.Time), Altitude: deg(c.Altitude), True: turn(c.True), Variation: deg(c.Variation),
+		Magnetic: turn(c.Magnetic), Relative: turn(c.Relative), Doubtful: c.Doubtful,
+	}
+}
+
+func dayJSON(d Day, kinds []ItemKind) jsonDay {
+	var programme []Item
+	for _, item := range d.Programme {
+		if slices.Contains(kinds, item.Kind) {
+			programme = append(programme, item)
+		}
+	}
 	return jsonDay{
 		Date: d.Date.Format(time.DateOnly), Offset: offset(d.Offset), Begin: utc(d.From), End: utc(d.To),
 		Illuminated: brief(d.Moon.Illuminated), Waxing: d.Moon.Waxing, NoWindow: d.NoWindow,
-		Remains: each(d.Remains, func(r Remain) jsonRemain { return jsonRemain{r.Body.String(), utc(r.Highest), deg(r.Altitude)} }),
+		Programme: each(programme, itemJSON),
+		Remains:   each(d.Remains, func(r Remain) jsonRemain { return jsonRemain{r.Body.String(), utc(r.Highest), deg(r.Altitude)} }),
 	}
 }

@@ -205,7 +205,37 @@ type jsonDay struct {
 	Illuminated brief        `json:"moon_illuminated_fraction"`
 	Waxing      bool         `json:"moon_waxing"`
 	NoWindow    string       `json:"no_window"`
+	Programme   []jsonItem   `json:"programme"`
 	Remains     []jsonRemain `json:"remains"`
+}
+
+// jsonItem is an item of the programme.
+type jsonItem struct {
+	ID     string       `json:"id"`
+	Kind   ItemKind     `json:"kind"`
+	Title  string       `json:"title"`
+	Begin  utc          `json:"begin"`
+	Best   utc          `json:"best"`
+	End    utc          `json:"end"`
+	Lat    deg          `json:"lat"`
+	Lon    east         `json:"lon"`
+	Bodies []string     `json:"bodies"`
+	Sights []jsonSight  `json:"sights"` // with presets and bearings
+	Checks []jsonCheck  `json:"checks"` // of the compass
+	Error  miles        `json:"expected_error_nm"`
+	Fix    *jsonQuality `json:"fix"` // null where there is none
+	Words  []string     `json:"words"`
+}
+
+type jsonCheck struct {
+	Body      string `json:"body"`
+	Time      utc    `json:"time"`
+	Altitude  deg    `json:"altitude_deg"`
+	True      turn   `json:"true_deg"`
+	Variation deg    `json:"variation_deg"` // east positive
+	Magnetic  turn   `json:"magnetic_deg"`
+	Relative  turn   `json:"relative_deg"`
+	Doubtful  string `json:"doubtful"`
 }
 
 type jsonRemain struct {

@@ -3,9 +3,12 @@ package plan
 import (
 	"cmp"
 	"fmt"
+	"runtime"
 	"slices"
 	"strings"
 	"time"
+
+	"golang.org/x/sync/errgroup"
 
 	"gloam/track"
 )
@@ -15,13 +18,21 @@ type ItemKind string
 
 // The kinds of item, in the order in which they are listed.
 const (
-	Stars ItemKind = "stars" // a star window with its round
-	Noon  ItemKind = "noon"  // the Sun on the meridian
-	Daily ItemKind = "daily" // the day's rising, setting and twilights
+	Stars       ItemKind = "stars"        // a star window with its round
+	Noon        ItemKind = "noon"         // the Sun on the meridian
+	SunLines    ItemKind = "sun-lines"    // the two lines of a running fix
+	MoonLines   ItemKind = "moon-lines"   // Moon and Sun by day
+	PlanetLines ItemKind = "planet-lines" // Venus by day
+	Compass     ItemKind = "compass"      // bearings to check the compass by
+	Daily       ItemKind = "daily"        // the day's rising, setting and twilights
+	Moonlit     ItemKind = "moonlit"      // stars over a horizon under the Moon
 )
 
 // ItemKinds are all kinds.
-var ItemKinds = []ItemKind{Stars, Noon, Daily}
+var ItemKinds = []ItemKind{Stars, Noon, SunLines, MoonLines, PlanetLines, Compass, Daily, Moonlit}
+
+// UsualKinds are all kinds but moonlit, which is for those who ask for it.
+var UsualKinds = ItemKinds[:len(ItemKinds)-1]
 
 // ParseItemKinds reads kinds with commas between them: "stars,noon".
 func ParseItemKinds(text string) (kinds []ItemKind, err error) {
@@ -44,25 +55,65 @@ type Item struct {
 	Title            string       // one line, without the time
 	Begin, Best, End time.Time    // UTC: be ready from, aim at, over by
 	Fix              track.Fix    // the ship at Best
-	Window           *Window      // of kind stars, else nil
+	Window           *Window      // of kinds stars and moonlit, else nil
 	Sights           []RoundSight // each at its own time and place
+	Checks           []Check      // of kind compass
+	ExpectedNM       float64      // of the fix or line this gives; 0 where it gives none
+	Quality          *FixQuality  // of the fix, nil where it gives none
 	Words            []string     // what to do, what comes of it, what to mind
 }
 
+// programmes gives each day its programme.
+func (s *sky) programmes(days []Day, set Settings, clock *track.Clock) {
+	s.sunCrossings(0) // searched once, before the days ask for it at the same time
+	var group errgroup.Group
+	group.SetLimit(runtime.GOMAXPROCS(0))
+	for i := range days {
+		group.Go(func() error {
+			days[i].Programme = s.programme(&days[i], &set, clock)
+			return nil
+		})
+	}
+	_ = group.Wait() // none fails
+	nameItems(days)
+}
+
 // programme lists what a day has, in order of time.
-func (s *sky) programme(d *Day, clock *track.Clock) []Item {
+func (s *sky) programme(d *Day, set *Settings, clock *track.Clock) []Item {
 	items := s.daily(d, clock)
 	for i := range d.Windows {
 		w := &d.Windows[i]
-		items = append(items, Item{Kind: Stars, ID: w.ID, Title: w.Title(), Begin: w.Begin, Best: w.Best, End: w.End, Fix: w.Fix, Window: w, Sights: w.Round})
+		items = append(items, w.item())
+		items = append(items, s.lowStar(w)...)
 	}
 	for _, e := range d.Events {
 		if e.Kind == MeridianPassage {
-			items = append(items, s.noon(e))
+			items = append(items, s.noon(e, set))
 		}
+	}
+	t := s.sunTable(d, set)
+	items = append(items, t.sunLines(d, clock)...)
+	items = append(items, t.moonLines()...)
+	items = append(items, t.planetLines()...)
+	items = append(items, s.amplitudes(d)...)
+	items = append(items, t.lowSun(clock)...)
+	if set.Moonlit {
+		items = append(items, t.moonlit()...)
 	}
 	slices.SortStableFunc(items, func(a, b Item) int { return a.Best.Compare(b.Best) })
 	return items
+}
+
+// item is a star window as one of the programme.
+func (w *Window) item() Item {
+	item := Item{
+		Kind: Stars, ID: w.ID, Title: w.Title(), Begin: w.Begin, Best: w.Best, End: w.End, Fix: w.Fix,
+		Window: w, Sights: w.Round, Words: append([]string{}, w.Warnings...),
+	}
+	if len(w.RoundFix.Bodies) > 1 {
+		item.Quality, item.ExpectedNM = &w.RoundFix, finite(w.RoundFix.Covariance.ExpectedError())
+	}
+	return item
 }
 
 // Title is the window's kind with the bodies of the best triad, or with what
@@ -101,18 +152,6 @@ func (s *sky) daily(d *Day, clock *track.Clock) []Item {
 	return []Item{item}
 }
 
-// noonReady is how long before meridian passage to be ready; noonOver how long
-// after it the Sun has surely dipped.
-const (
-	noonReady = 15 * time.Minute
-	noonOver  = 5 * time.Minute
-)
-
-// noon is the Sun's meridian passage.
-func (s *sky) noon(e Event) Item {
-	return Item{Kind: Noon, Title: "Sun on the meridian", Begin: e.Time.Add(-noonReady), Best: e.Time, End: e.Time.Add(noonOver), Fix: s.passage.At(e.Time)}
-}
-
 // nameItems gives each item its ID: ship's date and kind, numbered from the
 // second of a kind on a date. Those of windows have one.
 func nameItems(days []Day) {
@@ -120,7 +159,7 @@ func nameItems(days []Day) {
 	for _, d := range days {
 		for i := range d.Programme {
 			item := &d.Programme[i]
-			if item.ID == "" {
+			if item.Kind != Stars {
 				item.ID = numbered(seen, d.Date.Format(time.DateOnly)+"-"+string(item.Kind))
 			}
 		}

@@ -36,6 +36,11 @@ type Settings struct {
 	Loss    float64       // chance that a sight is lost, 0 to under 1
 	DRError float64       // standard error of the DR position, north and east, NM, above 0
 
+	// The day's work.
+	RunError     float64    // standard error of a run, as a part of its length, 0 to 0.5
+	SunClearance unit.Angle // how far from the Sun a telescope may point, 0° to 90°
+	Moonlit      bool       // look for horizons under the Moon at night
+
 	DeltaT   func(time.Time) time.Duration // TT - UT1
 	ShipTime track.ShipTime                // how the clock is kept; nil for nautical zones
 }
@@ -65,6 +70,8 @@ func DefaultSettings() Settings {
 		Pace:            3 * time.Minute,
 		Loss:            0.25,
 		DRError:         5,
+		RunError:        0.05,
+		SunClearance:    unit.AngleFromDeg(20),
 		DeltaT:          astro.DeltaT,
 	}
 }
@@ -102,6 +109,8 @@ func (s Settings) Validate() error {
 		{"pace (s)", s.Pace.Seconds(), 10, 3600},
 		{"chance of losing a sight", s.Loss, 0, 0.99},
 		{"error of the DR position (NM)", s.DRError, 0.1, 100},
+		{"error of the run (part of it)", s.RunError, 0, 0.5},
+		{"angle kept from the Sun (°)", s.SunClearance.Deg(), 0, 90},
 	} {
 		if math.IsNaN(c.Value) || c.Value < c.Min-1e-9 || c.Value > c.Max+1e-9 {
 			return &c

@@ -4,11 +4,11 @@ import (
 	"bytes"
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 	"time"
 	"unicode/utf8"
 
-	"gloam/astro"
 	"gloam/track/dm"
 )
 
@@ -16,14 +16,14 @@ import (
 const textWidth = 80
 
 // WriteText prints the plan for a person: the voyage, then for each ship's
-// date the events, the Moon, and the windows. Times are given by the ship's
-// clock and in UTC, to the minute. With bold, headings are set off by terminal
-// codes.
-func (p *Plan) WriteText(w io.Writer, bold bool) error {
+// date the events, the Moon, the programme and the windows, as far as their
+// kinds are asked for. Times are given by the ship's clock and in UTC, to the
+// minute. With bold, headings are set off by terminal codes.
+func (p *Plan) WriteText(w io.Writer, kinds []ItemKind, bold bool) error {
 	t := &text{shipTime: p.Clock.At, bold: bold}
 	t.voyage(p)
 	for i := range p.Days {
-		t.day(&p.Days[i])
+		t.day(&p.Days[i], kinds)
 	}
 	t.cautions()
 	_, err := w.Write(t.Bytes())
@@ -109,24 +109,36 @@ func spanText(d time.Duration) string {
 	return fmt.Sprintf("%d h %d min", minutes/60, minutes%60)
 }
 
-func (t *text) day(d *Day) {
+func (t *text) day(d *Day, kinds []ItemKind) {
 	t.heading(strings.ToUpper(d.Date.Format("Monday 2 January 2006")), "ship's time "+ZoneText(d.Offset))
 	for _, c := range d.Changes {
 		t.line("%s.", changeText(c))
 	}
 	t.line("Moon %s.", d.Moon.Words())
+	if d.NoWindow != "" && slices.Contains(kinds, Stars) {
+		t.line("No star window: %s.", d.NoWindow)
+		t.programme(d, kinds)
+	}
+	if slices.Contains(kinds, Daily) {
+		t.events(d)
+	}
+	if d.NoWindow == "" || !slices.Contains(kinds, Stars) {
+		t.programme(d, kinds)
+	}
+	if slices.Contains(kinds, Stars) {
+		for i := range d.Windows {
+			t.window(&d.Windows[i])
+		}
+	}
+}
+
+func (t *text) events(d *Day) {
 	if len(d.Events) > 0 {
 		t.line("")
 		t.line(" ship   UTC on     event             DR position")
 	}
 	for _, e := range d.Events {
 		t.line("%s  %s  %-16s  %v", t.ship(e.Time), t.minute(e.Time).Format("15:04 on 02"), e.Kind.Words(), e.Position)
-	}
-	for i := range d.Windows {
-		t.window(&d.Windows[i])
-	}
-	if d.NoWindow != "" {
-		t.noWindow(d)
 	}
 }
 
@@ -150,22 +162,6 @@ func fromTo(a, b time.Time) string {
 		return a.Format("15:04") + b.Format(" to 15:04")
 	}
 	return a.Format("15:04") + b.Format(" to 15:04 on 02")
-}
-
-func (t *text) noWindow(d *Day) {
-	t.line("")
-	t.line("No star window: %s.", d.NoWindow)
-	if len(d.Remains) == 0 {
-		t.line("Nothing else stands between the altitude limits.")
-	}
-	for _, r := range d.Remains {
-		note := ""
-		if r.Body == astro.Venus {
-			note = "; never sweep the telescope near the Sun"
-		}
-		t.line("To shoot: %-6s %s high at %s ship, %s UTC%s", r.Body, dm.Altitude(r.Altitude),
-			t.ship(r.Highest), t.minute(r.Highest).Format("15:04"), note)
-	}
 }
 
 func (t *text) window(w *Window) {

@@ -14,7 +14,7 @@ import (
 func textOf(t *testing.T, p *Plan, bold bool) string {
 	t.Helper()
 	var b bytes.Buffer
-	if err := p.WriteText(&b, bold); err != nil {
+	if err := p.WriteText(&b, UsualKinds, bold); err != nil {
 		t.Fatal(err)
 	}
 	return b.String()
@@ -54,7 +54,7 @@ func TestTextOfSixVoyages(t *testing.T) {
 
 func TestTextSaysWhyThereIsNoWindow(t *testing.T) {
 	text := textOf(t, planOf(t, hovering(t, 78, 15, "2027-06-20T00:00:00Z", 1), DefaultSettings()), false)
-	for _, want := range []string{"No star window: the Sun does not sink to -6° (lowest 11°", "To shoot: Sun    35°"} {
+	for _, want := range []string{"No star window: the Sun does not sink to -6° (lowest 11°", "Noon: Sun on the meridian    35°"} {
 		if !strings.Contains(text, want) {
 			t.Errorf("no %q in\n%s", want, text)
 		}
@@ -91,7 +91,7 @@ func (fullDisk) Write([]byte) (int, error) { return 0, errors.New("no space left
 
 func TestWritersTellOfErrors(t *testing.T) {
 	p := planOf(t, hovering(t, 40, 0, "2026-11-20T12:00:00Z", 1), DefaultSettings())
-	if p.WriteText(fullDisk{}, false) == nil || p.WriteJSON(fullDisk{}) == nil {
+	if p.WriteText(fullDisk{}, UsualKinds, false) == nil || p.WriteJSON(fullDisk{}, UsualKinds) == nil {
 		t.Error("a failing writer went unnoticed")
 	}
 }

@@ -23,6 +23,9 @@ const twins = 1.5
 // another, and of a horizon by moonlight.
 func warnings(bodies []Candidate, moon astro.Place, l *lookout) (all []string) {
 	for i, a := range bodies {
+		if a.EitherLimb {
+			all = append(all, fmt.Sprintf("either limb of the Moon is full; presets are for the %v one", a.Limb))
+		}
 		if d := a.Separation(moon); a.Body != astro.Moon && d < nearMoon {
 			all = append(all, fmt.Sprintf("%v stands %.1f° from the Moon: hard to see", a.Body, d.Deg()))
 		}

@@ -29,6 +29,7 @@ type Passage struct {
 	Legs               []Leg     // each begins when the one before ends; a stay is one of no length
 	Departure, Arrival time.Time // UTC: begin and end, stays at the ends included
 	DistanceNM         float64
+	starts             []float64 // NM sailed when each leg begins
 }
 
 // Fix is the ship's state at an instant by dead reckoning.
@@ -43,6 +44,7 @@ type Fix struct {
 func newPassage(name string, legs []Leg) (*Passage, error) {
 	p := &Passage{Name: name, Legs: legs, Departure: legs[0].ETD, Arrival: legs[len(legs)-1].ETA}
 	for _, l := range legs {
+		p.starts = append(p.starts, p.DistanceNM)
 		p.DistanceNM += l.DistanceNM
 	}
 	if length := p.Arrival.Sub(p.Departure); length > MaxDuration {
@@ -108,6 +110,13 @@ func (p *Passage) At(t time.Time) Fix {
 	nm := leg.SpeedKn * t.Sub(leg.ETD).Hours()
 	pos, course := leg.At(math.Min(math.Max(nm, 0), leg.DistanceNM))
 	return Fix{Position: pos, Course: course, SpeedKn: leg.SpeedKn, Leg: i}
+}
+
+// SailedNM is how far the ship has come at an instant, in NM.
+func (p *Passage) SailedNM(t time.Time) float64 {
+	i := p.At(t).Leg
+	l := &p.Legs[i]
+	return p.starts[i] + math.Min(math.Max(l.SpeedKn*t.Sub(l.ETD).Hours(), 0), l.DistanceNM)
 }
 
 // UnderWay is the time the passage lasts, stays left out.

@@ -44,12 +44,14 @@ var (
 	}
 )
 
+// sineSeries sums c[k-1] sin 2kx by Clenshaw's rule.
 func sineSeries(c []float64, x float64) float64 {
-	sum := 0.0
-	for k, a := range c {
-		sum += a * math.Sin(2*float64(k+1)*x)
+	sin, cos := math.Sincos(2 * x)
+	var u, before float64
+	for k := len(c) - 1; k >= 0; k-- {
+		u, before = c[k]+2*cos*u-before, u
 	}
-	return sum
+	return u * sin
 }
 
 // meridianArc is the distance in nautical miles along the meridian from the

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"strings"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -20,6 +21,7 @@ type calendarFlags struct {
 	alarms      []string
 	busy        bool
 	include     string
+	included    []plan.ItemKind // what that says; nil where it is not given
 }
 
 func (f *calendarFlags) define(cmd *cobra.Command) {
@@ -28,16 +30,20 @@ func (f *calendarFlags) define(cmd *cobra.Command) {
 	flags.StringVar(&f.update, "update", "", "bring this earlier calendar of the voyage up to date")
 	flags.StringArrayVar(&f.alarms, "alarm", []string{"20m"}, "calendar alarm before each event, as 20m or 1h; may be given many times; none for none")
 	flags.BoolVar(&f.busy, "busy", false, "calendar events take up time (default: free)")
-	flags.StringVar(&f.include, "include", "stars", "what becomes an event: stars, noon, daily, with commas")
+	flags.StringVar(&f.include, "include", "", "what to plan and tell, with commas: "+kindNames()+" (default: all but moonlit; in the calendar stars,noon)")
+	_ = cmd.RegisterFlagCompletionFunc("include", cobra.FixedCompletions(strings.Split(kindNames(), ","), cobra.ShellCompDirectiveNoFileComp|cobra.ShellCompDirectiveNoSpace))
 }
 
 // options checks the flags.
 func (f *calendarFlags) options(stamp time.Time) (calendars.Options, error) {
 	opt := calendars.Options{Busy: f.busy, Stamp: stamp}
 	var err error
-	if opt.Include, err = plan.ParseItemKinds(f.include); err != nil {
-		return opt, usage(fmt.Errorf("--include %w", err))
+	if f.include != "" {
+		if f.included, err = plan.ParseItemKinds(f.include); err != nil {
+			return opt, usage(fmt.Errorf("--include %w", err))
+		}
 	}
+	opt.Include = f.kinds([]plan.ItemKind{plan.Stars, plan.Noon})
 	if f.ics != "" && f.update != "" {
 		return opt, usage(errors.New("--ics and --update: one of the two (--update writes the file it reads)"))
 	}
@@ -55,6 +61,22 @@ func (f *calendarFlags) options(stamp time.Time) (calendars.Options, error) {
 		opt.Alarms = append(opt.Alarms, d)
 	}
 	return opt, nil
+}
+
+// kinds are those included, or the usual ones.
+func (f *calendarFlags) kinds(usual []plan.ItemKind) []plan.ItemKind {
+	if f.included == nil {
+		return usual
+	}
+	return f.included
+}
+
+func kindNames() string {
+	var names []string
+	for _, k := range plan.ItemKinds {
+		names = append(names, string(k))
+	}
+	return strings.Join(names, ",")
 }
 
 // maxAlarm is how long before an event an alarm may be: four weeks.

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"slices"
 	"strconv"
 	"time"
 
@@ -94,6 +95,7 @@ func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
 		return nil, err
 	}
 	set.ShipTime = rule
+	set.Moonlit = slices.Contains(f.kinds(nil), plan.Moonlit)
 	p, err := plan.New(passage, set)
 	if err != nil {
 		return nil, settingError(err)
@@ -146,7 +148,8 @@ func (f *planFlags) outputs(p *plan.Plan, opt calendars.Options, w world) ([]out
 		group.Go(func() error { return write(b) })
 	}
 	add(f.ics, calendarWriter(p, opt))
-	add(f.json, p.WriteJSON)
+	kinds := f.kinds(plan.UsualKinds)
+	add(f.json, func(b io.Writer) error { return p.WriteJSON(b, kinds) })
 	var changes calendars.Changes
 	if f.update != "" {
 		b, found, err := f.updated(p, opt)
@@ -157,7 +160,7 @@ func (f *planFlags) outputs(p *plan.Plan, opt calendars.Options, w world) ([]out
 	}
 	if f.ics != "-" && f.json != "-" {
 		add("-", func(b io.Writer) error {
-			if err := p.WriteText(b, bold(w)); err != nil || f.update == "" {
+			if err := p.WriteText(b, kinds, bold(w)); err != nil || f.update == "" {
 				return err
 			}
 			return changes.WriteText(b, p.Clock.At)

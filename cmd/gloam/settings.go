@@ -23,6 +23,7 @@ type settingsFlags struct {
 	sights                              int
 	pace                                time.Duration
 	loss, drError                       float64
+	runError, sunClearance              float64
 	deltaT                              deltaTFlag
 	changed                             func(string) bool
 }
@@ -51,6 +52,8 @@ func (f *settingsFlags) define(cmd *cobra.Command) {
 	flags.Float64Var(&f.sightError, "sight-error", set.SightError.Min(), "standard error of one sight, minutes")
 	flags.Float64Var(&f.commonError, "common-error", set.CommonError.Min(), "standard error common to all sights of a window, minutes")
 	flags.Float64Var(&f.drError, "dr-error", set.DRError, "standard error of the DR position, NM")
+	flags.Float64Var(&f.runError, "run-error", 100*set.RunError, "standard error of a run, per cent of its length")
+	flags.Float64Var(&f.sunClearance, "sun-clearance", set.SunClearance.Deg(), "how far from the Sun a telescope may point by day, degrees")
 	f.deltaT.define(cmd)
 	_ = cmd.RegisterFlagCompletionFunc("without", func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
 		return bodyNames(), cobra.ShellCompDirectiveNoFileComp
@@ -64,6 +67,7 @@ var settingFlags = map[string]string{
 	"Sun's lower limit (°)": "sun-lower", "Sun's upper limit (°)": "sun-upper", "humidity": "humidity", "telescope's gain (magnitudes)": "telescope-gain",
 	"Sun's altitude for the horizon opposite it (°)": "horizon-away", "Sun's altitude for the horizon under it (°)": "horizon-under",
 	"sights": "sights", "pace (s)": "pace", "chance of losing a sight": "loss", "error of the DR position (NM)": "dr-error",
+	"error of the run (part of it)": "run-error", "angle kept from the Sun (°)": "sun-clearance",
 }
 
 // settingError tells which flag sets what is out of range.
@@ -90,6 +94,7 @@ func (f *settingsFlags) settings(eyeM float64) (plan.Settings, error) {
 	set.HorizonAway, set.HorizonUnder = unit.AngleFromDeg(f.horizonAway), unit.AngleFromDeg(f.horizonUnder)
 	set.SightError, set.CommonError = unit.AngleFromMin(f.sightError), unit.AngleFromMin(f.commonError)
 	set.TelescopeGain, set.Sights, set.Pace, set.Loss, set.DRError = f.gain, f.sights, f.pace, f.loss, f.drError
+	set.RunError, set.SunClearance = f.runError/100, unit.AngleFromDeg(f.sunClearance)
 	var err error
 	if set.Clouds, err = parseArcs("--cloud", f.clouds); err != nil {
 		return set, err
