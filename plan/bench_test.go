@@ -48,6 +48,13 @@ func benchmarkPlan(b *testing.B, days int, set Settings) {
 func BenchmarkPlan15Days(b *testing.B)  { benchmarkPlan(b, 15, DefaultSettings()) }
 func BenchmarkPlan150Days(b *testing.B) { benchmarkPlan(b, 150, DefaultSettings()) }
 
+// Everything included, moonlit windows too.
+func BenchmarkPlan30DaysWhole(b *testing.B) {
+	set := DefaultSettings()
+	set.Moonlit = true
+	benchmarkPlan(b, 30, set)
+}
+
 // With rounds of one sight nothing is chosen: events, windows, what can be
 // seen, and all triads.
 func BenchmarkTriads15Days(b *testing.B) {

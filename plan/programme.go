@@ -92,6 +92,7 @@ func (s *sky) programme(d *Day, set *Settings, clock *track.Clock) []Item {
 		}
 	}
 	t := s.sunTable(d, set)
+	defer t.free()
 	items = append(items, t.sunLines(d, clock)...)
 	items = append(items, t.moonLines()...)
 	items = append(items, t.planetLines()...)

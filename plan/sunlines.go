@@ -18,12 +18,11 @@ type sunLines struct {
 	*sunTable
 	noon  int     // the minute of noon; below 0 where the day has none, and the fix is at the second line
 	miles float64 // sailed at noon
-	lines []*sunLine
 }
 
 // sunLine is a line of the Sun at one minute, run to noon.
 type sunLine struct {
-	usable bool
+	known, usable bool
 	information
 }
 
@@ -44,13 +43,14 @@ func (l *sunLines) pair(i, j int) []Sight {
 
 // line is a line run to noon.
 func (l *sunLines) line(i int) *sunLine {
-	if l.lines[i] == nil {
-		l.lines[i] = &sunLine{usable: l.usable(i)}
-		if l.lines[i].usable && l.noon >= 0 {
-			l.lines[i].information = l.run(i, l.miles).information()
+	line := &l.lines[i]
+	if !line.known {
+		line.known, line.usable = true, l.usable(i)
+		if line.usable && l.noon >= 0 {
+			line.information = l.run(i, l.miles).information()
 		}
 	}
-	return l.lines[i]
+	return line
 }
 
 // error is the expected error of the running fix, squared; endless for a pair
@@ -68,8 +68,8 @@ func (l *sunLines) error(i, j int) float64 {
 	return both.square(commonWeight(l.set.CommonError))
 }
 
-// best finds the pair of minutes with the least error: on a coarse grid, then
-// minute by minute around the best until it moves no more.
+// best finds the pair of minutes with the least error: on a coarse grid, then on
+// finer ones around the best until it moves no more.
 func (l *sunLines) best() (i, j int, ok bool) {
 	least, last := math.Inf(1), len(l.rows)-1
 	try := func(fromA, toA, fromB, toB, step int) (better bool) {
@@ -85,7 +85,10 @@ func (l *sunLines) best() (i, j int, ok bool) {
 		}
 		return better
 	}
-	for try(0, last, 0, last, coarse); try(i-coarse, i+coarse, j-coarse, j+coarse, 1); {
+	try(0, last, 0, last, coarse)
+	for _, step := range []int{3, 1} { // out to nine minutes, then to three
+		for try(i-3*step, i+3*step, j-3*step, j+3*step, step) {
+		}
 	}
 	return i, j, !math.IsInf(least, 1)
 }
@@ -110,7 +113,7 @@ func (l *sunLines) span(i int, error func(int) float64) (from, to time.Time) {
 
 // sunLines are the day's two Sun lines, where it has any.
 func (t *sunTable) sunLines(d *Day, clock *track.Clock) []Item {
-	l := &sunLines{sunTable: t, noon: -1, lines: make([]*sunLine, len(t.rows))}
+	l := &sunLines{sunTable: t, noon: -1}
 	for _, e := range d.Events {
 		if e.Kind == MeridianPassage && len(t.rows) > 0 {
 			l.noon, l.miles = t.minute(e.Time), t.sky.passage.SailedNM(e.Time)
@@ -119,6 +122,7 @@ func (t *sunTable) sunLines(d *Day, clock *track.Clock) []Item {
 	i, j, ok := l.best()
 	if !ok && l.noon >= 0 { // the Sun can be shot on one side of noon only
 		l.noon = -1
+		clear(l.lines)
 		i, j, ok = l.best()
 	}
 	if !ok {

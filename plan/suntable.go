@@ -1,6 +1,7 @@
 package plan
 
 import (
+	"sync"
 	"time"
 
 	"github.com/soniakeys/unit"
@@ -16,6 +17,8 @@ type sunTable struct {
 	set  *Settings
 	from time.Time // the first minute
 	rows []sunRow
+
+	lines []sunLine // for the choice of Sun lines
 }
 
 // sunRow is one minute.
@@ -26,15 +29,34 @@ type sunRow struct {
 	altitude, azimuth unit.Angle
 }
 
+// tables keeps the storage of tables no longer used: a day's is large.
+var tables = sync.Pool{New: func() any { return new(sunTable) }}
+
+// sunTable is that of a day, for as long as it is not freed.
 func (s *sky) sunTable(d *Day, set *Settings) *sunTable {
-	from := d.From.Truncate(time.Minute)
-	if from.Before(d.From) {
-		from = from.Add(time.Minute)
+	t := tables.Get().(*sunTable)
+	t.sky, t.set, t.from = s, set, d.From.Truncate(time.Minute)
+	if t.from.Before(d.From) {
+		t.from = t.from.Add(time.Minute)
 	}
-	if !from.Before(d.To) {
-		return &sunTable{sky: s, set: set, from: from}
+	n := 0
+	if t.from.Before(d.To) {
+		n = int(d.To.Sub(t.from)/time.Minute) + 1
 	}
-	return &sunTable{s, set, from, make([]sunRow, int(d.To.Sub(from)/time.Minute)+1)}
+	t.rows, t.lines = cleared(t.rows, n), cleared(t.lines, n)
+	return t
+}
+
+func (t *sunTable) free() { tables.Put(t) }
+
+// cleared is a list of n zeros, in the storage of another where that is enough.
+func cleared[T any](list []T, n int) []T {
+	if cap(list) < n {
+		return make([]T, n)
+	}
+	list = list[:n]
+	clear(list)
+	return list
 }
 
 func (t *sunTable) time(i int) time.Time { return t.from.Add(time.Duration(i) * time.Minute) }

@@ -105,18 +105,22 @@ func Ahead(from Position, course unit.Angle, speedKn float64, t time.Time, lengt
 // course of the leg that begins there. Before Departure and after Arrival it
 // gives the state at that end.
 func (p *Passage) At(t time.Time) Fix {
-	i := sort.Search(len(p.Legs)-1, func(i int) bool { return p.Legs[i+1].ETD.After(t) })
+	i, nm := p.onLeg(t)
+	pos, course := p.Legs[i].At(nm)
+	return Fix{Position: pos, Course: course, SpeedKn: p.Legs[i].SpeedKn, Leg: i}
+}
+
+// onLeg is the leg of an instant and how far the ship has come on it, NM.
+func (p *Passage) onLeg(t time.Time) (i int, nm float64) {
+	i = sort.Search(len(p.Legs)-1, func(i int) bool { return p.Legs[i+1].ETD.After(t) })
 	leg := &p.Legs[i]
-	nm := leg.SpeedKn * t.Sub(leg.ETD).Hours()
-	pos, course := leg.At(math.Min(math.Max(nm, 0), leg.DistanceNM))
-	return Fix{Position: pos, Course: course, SpeedKn: leg.SpeedKn, Leg: i}
+	return i, math.Min(math.Max(leg.SpeedKn*t.Sub(leg.ETD).Hours(), 0), leg.DistanceNM)
 }
 
 // SailedNM is how far the ship has come at an instant, in NM.
 func (p *Passage) SailedNM(t time.Time) float64 {
-	i := p.At(t).Leg
-	l := &p.Legs[i]
-	return p.starts[i] + math.Min(math.Max(l.SpeedKn*t.Sub(l.ETD).Hours(), 0), l.DistanceNM)
+	i, nm := p.onLeg(t)
+	return p.starts[i] + nm
 }
 
 // UnderWay is the time the passage lasts, stays left out.
