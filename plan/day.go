@@ -22,13 +22,17 @@ type Day struct {
 	NoWindow string   // why the day has no window; empty where it has one
 	Remains  []Remain // what there is to shoot on a day without a window
 
-	Programme []Item // all that is worth doing, in order of time
+	Programme []Item      // all that is worth doing, in order of time
+	Light     []LightSpan // the day from end to end
+	MoonUp    []Span      // when the Moon is above the horizon
 }
 
 // MoonPhase is how the Moon looks.
 type MoonPhase struct {
 	Illuminated float64 // lit part of the disc, 0 to 1
 	Waxing      bool
+	Highest     time.Time  // UTC: when it stands highest on the day, to an hour
+	Tilt        unit.Angle // its lit side then, clockwise from straight up
 }
 
 // Remain is a body that can be shot on a day without star window: when it
@@ -59,7 +63,8 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 		for len(windows) > 0 && (last || windows[0].Begin.Before(day.To)) {
 			day.Windows, windows = append(day.Windows, windows[0]), windows[1:]
 		}
-		day.Moon = s.moonPhase(middle(day.From, day.To))
+		day.Moon = s.moonPhase(day.From, day.To)
+		day.Light, day.MoonUp = s.light(&day), s.moonUp(&day)
 		if len(day.Windows) == 0 {
 			day.NoWindow = s.noWindow(day, set, clock, every)
 			day.Remains = s.remains(day, set)
@@ -68,11 +73,6 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 	}
 	s.programmes(all, set, clock)
 	return all
-}
-
-func (s *sky) moonPhase(t time.Time) MoonPhase {
-	lit := func(t time.Time) float64 { return s.ephemeris.Place(astro.Moon, t).Illuminated }
-	return MoonPhase{lit(t), lit(t.Add(time.Hour)) > lit(t)}
 }
 
 // noWindow says in words why a day has no window: a window of another date

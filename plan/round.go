@@ -138,6 +138,7 @@ func usable(bodies []Candidate) (begin, end time.Time, ok bool) {
 func (s *sky) fill(w *Window, set *Settings) {
 	at := s.ephemeris.At(w.Best)
 	l := set.lookout(at, w.Best, w.Fix)
+	w.SunAzimuth = l.sun.Azimuth
 	w.Bodies = s.visible(w, set, set.candidates(at, w.Fix.Position))
 	w.Triads = set.triads(w.Bodies)
 	w.Warnings = warnings(w.Bodies, at.Place(astro.Moon), &l)

@@ -72,7 +72,7 @@ func (t *text) clockDays(clock *track.Clock) {
 	for i, d := range clock.Days() {
 		zone, done := d.Offset, []string{}
 		for _, c := range clock.Changes(d) {
-			done, zone = append(done, changeText(c)), c.Offset()
+			done, zone = append(done, ChangeText(c)), c.Offset()
 		}
 		if len(done) > 0 || i == 0 {
 			t.line("%s  ship's time %-18s %s", d.Date.Format("2006-01-02"), ZoneText(zone), strings.Join(done, "; "))
@@ -86,8 +86,8 @@ func (t *text) notes(notes []string) {
 	}
 }
 
-// changeText says what is done to clock and date.
-func changeText(c track.Change) string {
+// ChangeText says what is done to clock and date: "Clock back 1 h at midnight".
+func ChangeText(c track.Change) string {
 	var done []string
 	if c.Clock != 0 {
 		when := "at midnight"

@@ -43,7 +43,7 @@ func NewReport(t time.Time, from track.Position, course unit.Angle, speedKn floa
 	}
 	s := newSky(passage, set.DeltaT)
 	at := s.ephemeris.At(t)
-	r := &Report{Time: t.UTC(), Fix: passage.At(t), Settings: set, Moon: s.moonPhase(t)}
+	r := &Report{Time: t.UTC(), Fix: passage.At(t), Settings: set, Moon: s.moonPhase(t, t)}
 	l := set.lookout(at, t, r.Fix)
 	r.Sun = l.sun.Altitude
 	r.Bodies = set.reports(at, &l)

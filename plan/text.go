@@ -112,7 +112,7 @@ func spanText(d time.Duration) string {
 func (t *text) day(d *Day, kinds []ItemKind) {
 	t.heading(strings.ToUpper(d.Date.Format("Monday 2 January 2006")), "ship's time "+ZoneText(d.Offset))
 	for _, c := range d.Changes {
-		t.line("%s.", changeText(c))
+		t.line("%s.", ChangeText(c))
 	}
 	t.line("Moon %s.", d.Moon.Words())
 	if d.NoWindow != "" && slices.Contains(kinds, Stars) {

@@ -27,6 +27,7 @@ type Window struct {
 	Kind             WindowKind
 	Begin, End, Best time.Time    // UTC
 	Fix              track.Fix    // the ship at Best
+	SunAzimuth       unit.Angle   // at Best
 	Bodies           []Candidate  // at Best, by azimuth
 	Triads           []Triad      // the best first
 	Usable           [2]time.Time // UTC: from the third body that can be shot until fewer than three can; zero where never

@@ -2,7 +2,6 @@ package main
 
 import (
 	"bytes"
-	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -16,6 +15,7 @@ import (
 
 	"gloam/calendars"
 	"gloam/plan"
+	"gloam/plan/sheet"
 	"gloam/track"
 )
 
@@ -24,7 +24,8 @@ type planFlags struct {
 	settingsFlags
 	voyageFlags
 	calendarFlags
-	json string
+	json, sheet string
+	overhead    bool
 }
 
 func newPlan(w world) *cobra.Command {
@@ -53,6 +54,8 @@ func (f *planFlags) define(cmd *cobra.Command) {
 	f.voyageFlags.define(cmd)
 	f.calendarFlags.define(cmd)
 	flags.StringVar(&f.json, "json", "", "write the plan as JSON to this file (- for standard output, alone)")
+	flags.StringVar(&f.sheet, "sheet", "", "write the plan as an HTML page, to print and for the phone (- for standard output, alone)")
+	flags.BoolVar(&f.overhead, "overhead", false, "sky discs as seen looking up, east to the left (default: as on a chart)")
 	f.settingsFlags.define(cmd)
 }
 
@@ -110,13 +113,16 @@ func (f *planFlags) check(route string) error {
 	if f.update != "" {
 		calendar, flag = f.update, "--update"
 	}
-	switch {
-	case sameOutput(calendar, f.json):
-		return usage(fmt.Errorf("%s and --json name the same output", flag))
-	case sameFile(calendar, route):
-		return usage(fmt.Errorf("%s names the route file, which would be lost", flag))
-	case sameFile(f.json, route):
-		return usage(errors.New("--json names the route file, which would be lost"))
+	paths := []struct{ flag, path string }{{flag, calendar}, {"--json", f.json}, {"--sheet", f.sheet}}
+	for i, a := range paths {
+		if sameFile(a.path, route) {
+			return usage(fmt.Errorf("%s names the route file, which would be lost", a.flag))
+		}
+		for _, b := range paths[i+1:] {
+			if sameOutput(a.path, b.path) {
+				return usage(fmt.Errorf("%s and %s name the same output", a.flag, b.flag))
+			}
+		}
 	}
 	return nil
 }
@@ -150,6 +156,7 @@ func (f *planFlags) outputs(p *plan.Plan, opt calendars.Options, w world) ([]out
 	add(f.ics, calendarWriter(p, opt))
 	kinds := f.kinds(plan.UsualKinds)
 	add(f.json, func(b io.Writer) error { return p.WriteJSON(b, kinds) })
+	add(f.sheet, func(b io.Writer) error { return sheet.Write(b, p, sheet.Options{Kinds: kinds, Overhead: f.overhead}) })
 	var changes calendars.Changes
 	if f.update != "" {
 		b, found, err := f.updated(p, opt)
@@ -158,7 +165,7 @@ func (f *planFlags) outputs(p *plan.Plan, opt calendars.Options, w world) ([]out
 		}
 		all, changes = append(all, output{f.update, b}), found
 	}
-	if f.ics != "-" && f.json != "-" {
+	if f.ics != "-" && f.json != "-" && f.sheet != "-" {
 		add("-", func(b io.Writer) error {
 			if err := p.WriteText(b, kinds, bold(w)); err != nil || f.update == "" {
 				return err

@@ -10,6 +10,7 @@ import (
 	"github.com/spf13/cobra"
 
 	"gloam/plan"
+	"gloam/plan/sheet"
 	"gloam/track"
 	"gloam/track/dm"
 )
@@ -19,6 +20,8 @@ type skyFlags struct {
 	settingsFlags
 	at, pos       string
 	course, speed float64
+	disc          string
+	overhead      bool
 }
 
 func newSky(w world) *cobra.Command {
@@ -39,6 +42,8 @@ func newSky(w world) *cobra.Command {
 	flags.StringVar(&f.pos, "pos", "", `the position, as "49 12.4N 012 30.0W" or "49.2067,-12.5"`)
 	flags.Float64Var(&f.course, "course", 0, "true course, degrees")
 	flags.Float64Var(&f.speed, "speed", 0, "speed, knots")
+	flags.StringVar(&f.disc, "disc", "", "write the sky as a picture, SVG, to this file")
+	flags.BoolVar(&f.overhead, "overhead", false, "the disc as seen looking up, east to the left (default: as on a chart)")
 	f.settingsFlags.define(cmd)
 	return cmd
 }
@@ -71,6 +76,9 @@ func (f *skyFlags) run(w world) error {
 	if err := report.WriteText(&b, bold(w)); err != nil {
 		return err
 	}
-	_, err = w.out.Write(b.Bytes())
-	return err
+	outputs := []output{{"-", &b}}
+	if f.disc != "" {
+		outputs = append(outputs, output{f.disc, bytes.NewBufferString(sheet.DiscFile(&report.Window, &report.Settings, f.overhead))})
+	}
+	return writeAll(outputs, w.out)
 }
