@@ -11,6 +11,7 @@ require (
 	github.com/soniakeys/unit v1.0.0
 	github.com/spf13/cobra v1.10.2
 	github.com/tidwall/geodesic v1.52.4
+	golang.org/x/net v0.62.0
 	golang.org/x/sync v0.8.0
 	golang.org/x/term v0.48.0
 	pgregory.net/rapid v1.3.0

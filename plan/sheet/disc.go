@@ -194,16 +194,16 @@ func (d *disc) rank(b astro.Body) int {
 
 func (d *disc) name(c *plan.Candidate) {
 	x, y := d.at(c.Altitude, c.Azimuth)
-	name, class := c.Body.String(), "name"
+	name, class, letter := c.Body.String(), "name", letterWidth
 	if n := d.rank(c.Body); n < len(d.window.Round) {
-		name, class = fmt.Sprintf("%d %s", n+1, name), "name chosen"
+		name, class, letter = fmt.Sprintf("%d %s", n+1, name), "name chosen", boldWidth
 	}
-	b, ok := d.labels.place(x, y, markRadius(c.Body, c.Magnitude), len([]rune(name)))
+	b, ok := d.labels.place(x, y, markRadius(c.Body, c.Magnitude), letter*float64(len(name)))
 	if !ok {
 		d.unnamed = append(d.unnamed, name)
 		return
 	}
-	d.text(class, b.x+b.width/2, b.y+b.height-2.6, "middle", name)
+	d.text(class, b.x+b.width/2, b.y+b.height-3.2, "middle", name)
 	if far := math.Hypot(b.x+b.width/2-x, b.y+b.height/2-y); far > b.width/2+14 {
 		d.line("leader", x, y, math.Max(b.x, math.Min(x, b.x+b.width)), math.Max(b.y, math.Min(y, b.y+b.height)))
 	}

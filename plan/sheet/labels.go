@@ -25,19 +25,19 @@ type labels struct {
 
 // Sizes of the letters of a label, counted generously: no font is known here.
 const (
-	letterWidth  = 5.6
-	letterHeight = 10.5
+	letterWidth  = 6.5
+	boldWidth    = 7.3
+	letterHeight = 12
 )
 
 func (l *labels) mark(x, y, r float64) {
 	l.taken = append(l.taken, box{x - r, y - r, 2 * r, 2 * r})
 }
 
-// place finds room for a text near a mark of a radius: the eight directions,
+// place finds room for a text of a width near a mark of a radius: in sixteen directions,
 // then farther off. ok is false where there is none.
-func (l *labels) place(x, y, r float64, letters int) (b box, ok bool) {
-	width := float64(letters)*letterWidth + 2
-	for _, gap := range []float64{2, 7, 13, 20, 28} {
+func (l *labels) place(x, y, r, width float64) (b box, ok bool) {
+	for _, gap := range []float64{2, 7, 13, 20, 28, 38, 50} {
 		for k := range 16 {
 			sin, cos := math.Sincos(float64(k) * math.Pi / 8)
 			b := box{x + (r+gap)*sin, y - (r+gap)*cos - letterHeight/2, width, letterHeight}

@@ -10,7 +10,7 @@ import (
 
 // Measures of the ribbon, in the units of its viewBox.
 const (
-	ribbonLeft = 84.0
+	ribbonLeft = 88.0
 	ribbonHour = 24.0
 	ribbonRow  = 17.0
 	ribbonTop  = 20.0
@@ -51,7 +51,7 @@ func (s *svg) ribbonDay(p *plan.Plan, d *plan.Day, y float64) {
 		h := start + t.Sub(d.Begin).Hours()
 		return ribbonLeft + min(max(h, 0), 25)*ribbonHour
 	}
-	s.text("date", ribbonLeft-10, y+ribbonRow-5.5, "end", d.Date.Format("Mon 2 Jan"))
+	s.text("date", ribbonLeft-13, y+ribbonRow-5.5, "end", d.Date.Format("Mon 2 Jan"))
 	if len(d.Changes) > 0 {
 		s.text("shift", ribbonLeft-5, y+ribbonRow-5.5, "middle", changeMark(d))
 	}
