@@ -223,3 +223,39 @@ func randomVoyage(t testing.TB, rng *rand.Rand) *plan.Plan {
 	}
 	return made
 }
+
+// The pages are valid HTML by html-validate (npm), hostile names included.
+func TestValidHTML(t *testing.T) {
+	tool, err := filepath.Abs("../../.ci/node_modules/.bin/html-validate")
+	if err != nil {
+		t.Fatal(err)
+	}
+	if exec.Command(tool, "--version").Run() != nil {
+		t.Skip("html-validate is not installed: .ci/run installs it")
+	}
+	dir := t.TempDir()
+	pages := map[string][]byte{"hostile": written(t, long(t, `"><svg onload=x> & <b>`, 2))}
+	for name, p := range exampleVoyages(t) {
+		pages[name] = written(t, p)
+	}
+	var files []string
+	for name, data := range pages {
+		file := filepath.Join(dir, name+".html")
+		if err := os.WriteFile(file, data, 0o600); err != nil {
+			t.Fatal(err)
+		}
+		files = append(files, file)
+	}
+	out, err := exec.Command(tool, append([]string{"-c", "testdata/htmlvalidate.json"}, files...)...).CombinedOutput()
+	if err != nil {
+		t.Errorf("%v: %.2000s", err, out)
+	}
+	// The tool does find what is wrong.
+	broken := filepath.Join(dir, "broken.html")
+	if err := os.WriteFile(broken, bytes.Replace(pages["hostile"], []byte("</h1>"), []byte("</h2>"), 1), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	if exec.Command(tool, "-c", "testdata/htmlvalidate.json", broken).Run() == nil {
+		t.Error("a broken page is taken for valid")
+	}
+}

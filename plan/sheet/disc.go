@@ -149,13 +149,18 @@ func (d *disc) bearings() {
 // join draws the round's way from sight to sight.
 func (d *disc) join() {
 	var path strings.Builder
-	for i, r := range d.window.Round {
-		x, y := d.at(r.Altitude, r.Azimuth)
-		letter := 'L'
-		if i == 0 {
-			letter = 'M'
+	for _, r := range d.window.Round {
+		for _, c := range d.window.Bodies {
+			if c.Body != r.Body {
+				continue
+			}
+			x, y := d.at(c.Altitude, c.Azimuth)
+			letter := 'L'
+			if path.Len() == 0 {
+				letter = 'M'
+			}
+			fmt.Fprintf(&path, "%c%s %s", letter, num(x), num(y))
 		}
-		fmt.Fprintf(&path, "%c%s %s", letter, num(x), num(y))
 	}
 	if path.Len() > 0 {
 		d.add(`<path class="round" d="%s"/>`, path.String())
