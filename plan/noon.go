@@ -8,7 +8,6 @@ import (
 	"github.com/soniakeys/unit"
 
 	"gloam/astro"
-	"gloam/track"
 	"gloam/track/dm"
 )
 
@@ -109,6 +108,3 @@ func (s *sky) swing(passage time.Time, zenith unit.Angle) []string {
 	}
 	return append(words, line)
 }
-
-// run is how far the ship goes between two instants, NM.
-func run(p *track.Passage, a, b time.Time) float64 { return math.Abs(p.SailedNM(b) - p.SailedNM(a)) }
