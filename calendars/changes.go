@@ -34,7 +34,7 @@ type Changes []Change
 
 // note adds what becomes of an event.
 func (u *update) note(kind ChangeKind, event *part, was, now state) {
-	c := Change{Kind: kind, Title: event.text("SUMMARY"), Begin: now.begin, End: now.end, Before: [2]time.Time{was.begin, was.end}}
+	c := Change{Kind: kind, Title: clean(event.text("SUMMARY")), Begin: now.begin, End: now.end, Before: [2]time.Time{was.begin, was.end}}
 	if kind == Lost {
 		c.Begin, c.End = was.begin, was.end
 	}

@@ -117,6 +117,7 @@ func (e *entry) addAlarms(v *ics.VEvent, opt Options) {
 		a.SetAction(ics.ActionDisplay)
 		a.SetTrigger(trigger(before))
 		a.SetDescription(clean(e.summary))
+		a.AddProperty(alarmProperty, "1")
 	}
 }
 

@@ -11,7 +11,8 @@ import (
 
 // Limits of a calendar that is read.
 const (
-	maxCalendarBytes = 32 << 20
+	maxCalendarBytes = 16 << 20
+	maxLines         = 300000
 	maxDepth         = 8
 )
 
@@ -79,7 +80,9 @@ func unfold(data []byte) (lines []line, err error) {
 			if err := l.split(folds.Replace(string(raw[:len(raw)-2]))); err != nil {
 				return nil, err
 			}
-			lines = append(lines, l)
+			if lines = append(lines, l); len(lines) > maxLines {
+				return nil, fmt.Errorf("over %d lines (a calendar has fewer)", maxLines)
+			}
 		}
 		start = end
 	}
@@ -181,15 +184,19 @@ func (p *part) text(name string) string {
 }
 
 // drop takes out the properties of some names.
-func (p *part) drop(names ...string) { p.keep(func(l *line) bool { return !has(names, l.name) }, true) }
+func (p *part) drop(names ...string) {
+	p.keep(func(i *item) bool { return i.part != nil || !has(names, i.line.name) })
+}
 
-// dropParts takes out the components inside.
-func (p *part) dropParts() { p.keep(func(*line) bool { return true }, false) }
+// dropOwnAlarms takes out the alarms that gloam has written.
+func (p *part) dropOwnAlarms() {
+	p.keep(func(i *item) bool { return i.part == nil || i.part.value(alarmProperty) == "" })
+}
 
-func (p *part) keep(wanted func(*line) bool, parts bool) {
+func (p *part) keep(wanted func(*item) bool) {
 	kept := p.items[:0]
 	for _, i := range p.items {
-		if i.part != nil && parts || i.part == nil && wanted(&i.line) {
+		if wanted(&i) {
 			kept = append(kept, i)
 		}
 	}

@@ -3,6 +3,7 @@ package calendars
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 	"time"
@@ -16,12 +17,20 @@ const (
 	textProperty  = "X-GLOAM-TEXT"
 )
 
+// These mark alarms that are gloam's own, and events that gloam has cancelled,
+// not a person.
+const (
+	alarmProperty  = "X-GLOAM-ALARM"
+	cancelProperty = "X-GLOAM-CANCELLED"
+)
+
 // state is what a person would notice of an event.
 type state struct {
 	begin, best, end time.Time
 	offset           time.Duration
 	triad            string             // names of the best triad
 	sights           map[string]float64 // preset of each body of the round, minutes
+	first            time.Time          // of the round's first sight
 	order            []string           // the bodies as they come in sights
 	words            string             // hash of the text, figures and names left out
 }
@@ -34,6 +43,9 @@ func (e *entry) state() state {
 	s.best = whole(e.item.Best)
 	if w := e.item.Window; w != nil && len(w.Triads) > 0 {
 		s.triad = w.Triads[0].Names()
+	}
+	if len(e.item.Sights) > 0 {
+		s.first = whole(e.item.Sights[0].Time)
 	}
 	for _, r := range e.item.Sights {
 		name := r.Label()
@@ -71,17 +83,17 @@ func (s state) String() string {
 	}
 	return strings.Join([]string{
 		s.begin.Format(stateTime), s.best.Format(stateTime), s.end.Format(stateTime), strconv.Itoa(int(s.offset / time.Minute)),
-		strings.ReplaceAll(s.triad, ", ", "+"), strings.Join(sights, "+"), s.words,
+		strings.ReplaceAll(s.triad, ", ", "+"), strings.Join(sights, "+"), s.words, s.first.Format(stateTime),
 	}, "|")
 }
 
 // parseState reads what String has written.
 func parseState(text string) (s state, ok bool) {
 	f := strings.Split(text, "|")
-	if len(f) != 7 {
+	if len(f) != 8 {
 		return s, false
 	}
-	for i, t := range []*time.Time{&s.begin, &s.best, &s.end} {
+	for i, t := range map[int]*time.Time{0: &s.begin, 1: &s.best, 2: &s.end, 7: &s.first} {
 		var err error
 		if *t, err = time.Parse(stateTime, f[i]); err != nil {
 			return s, false
@@ -115,6 +127,12 @@ func (s state) moved(now state) bool {
 	return now.begin.Sub(s.begin).Abs() >= noticedTime || now.best.Sub(s.best).Abs() >= noticedTime || now.end.Sub(s.end).Abs() >= noticedTime
 }
 
+// otherRound tells whether the round begins at another time, or comes in another
+// order.
+func (s state) otherRound(now state) bool {
+	return now.first.Sub(s.first).Abs() >= noticedTime || !slices.Equal(s.order, now.order)
+}
+
 // otherBodies tells whether the best triad or the round have other bodies.
 func (s state) otherBodies(now state) bool {
 	same := s.triad == now.triad && len(s.sights) == len(now.sights)
@@ -127,7 +145,7 @@ func (s state) otherBodies(now state) bool {
 
 // differs tells whether a person would notice anything.
 func (s state) differs(now state) bool {
-	if s.moved(now) || s.otherBodies(now) || s.offset != now.offset || s.words != now.words {
+	if s.moved(now) || s.otherBodies(now) || s.otherRound(now) || s.offset != now.offset || s.words != now.words {
 		return true
 	}
 	for name, preset := range now.sights {

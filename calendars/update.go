@@ -5,18 +5,17 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"math"
 	"strconv"
 	"strings"
 	"time"
-
-	"golang.org/x/sync/errgroup"
 
 	"gloam/plan"
 )
 
 // ours are the properties that change with an event; all others in it are left
 // as the user or his program has them.
-var ours = []string{"DTSTAMP", "DTSTART", "DTEND", "DURATION", "SEQUENCE", "LAST-MODIFIED", "STATUS", "SUMMARY", "DESCRIPTION", "LOCATION", "GEO", stateProperty, textProperty}
+var ours = []string{"DTSTAMP", "DTSTART", "DTEND", "DURATION", "SEQUENCE", "LAST-MODIFIED", "STATUS", "SUMMARY", "DESCRIPTION", "LOCATION", "GEO", stateProperty, textProperty, cancelProperty}
 
 // Update brings an earlier calendar of the voyage up to date with a plan, and
 // tells what changed. Events in which a person would notice nothing new keep
@@ -25,27 +24,27 @@ var ours = []string{"DTSTAMP", "DTSTART", "DTEND", "DURATION", "SEQUENCE", "LAST
 // the plan has no longer are cancelled, those that ended before opt.Stamp are
 // left alone. Updating again changes nothing.
 //
+// Kinds of event that the old calendar has are kept up where opt names none.
+//
 // An error tells that old is no calendar of this voyage, or a damaged one.
 func Update(w io.Writer, old io.Reader, p *plan.Plan, opt Options) (Changes, error) {
-	var cal, fresh *part
-	var group errgroup.Group
-	group.Go(func() (err error) {
-		cal, err = readLines(old)
-		return err
-	})
-	group.Go(func() error {
-		data, err := serialise(p, opt)
-		if err == nil {
-			fresh, err = readLines(bytes.NewReader(data))
-		}
-		return err
-	})
-	err := group.Wait()
+	cal, err := readLines(old)
 	if err != nil {
 		return nil, err
 	}
 	u := &update{stamp: opt.Stamp.UTC().Truncate(time.Second)}
 	if u.known, err = eventsOf(cal, "-"+voyageKey(p.Passage)+uidEnd); err != nil {
+		return nil, err
+	}
+	if len(opt.Include) == 0 {
+		opt.Include = u.known.kinds()
+	}
+	data, err := serialise(p, opt)
+	if err != nil {
+		return nil, err
+	}
+	fresh, err := readLines(bytes.NewReader(data))
+	if err != nil {
 		return nil, err
 	}
 	for _, event := range fresh.parts("VEVENT") {
@@ -86,6 +85,29 @@ func eventsOf(cal *part, suffix string) (*events, error) {
 type events struct {
 	uids  []string
 	byUID map[string]*part
+}
+
+// kinds are the kinds of item that the events are of, by their UIDs: the ship's
+// date, then a kind of window or the kind itself.
+func (e *events) kinds() (kinds []plan.ItemKind) {
+	for _, k := range plan.ItemKinds {
+		for _, uid := range e.uids {
+			_, rest, _ := cutDate(uid)
+			if strings.HasPrefix(rest, string(k)+"-") || k == plan.Stars && strings.Contains(rest, "-stars-") {
+				kinds = append(kinds, k)
+				break
+			}
+		}
+	}
+	return kinds
+}
+
+// cutDate cuts a UID after the date it begins with.
+func cutDate(uid string) (date, rest string, ok bool) {
+	if len(uid) <= len(time.DateOnly) || uid[len(time.DateOnly)] != '-' {
+		return "", uid, false
+	}
+	return uid[:len(time.DateOnly)], uid[len(time.DateOnly)+1:], true
 }
 
 type update struct {
@@ -142,10 +164,11 @@ func stateOf(e *part) (s state, known bool) {
 // renew brings an event up to date where a person would notice it.
 func (u *update) renew(old, event *part, now state) {
 	was, known := stateOf(old)
-	back := strings.EqualFold(old.value("STATUS"), "CANCELLED")
+	cancelled := strings.EqualFold(old.value("STATUS"), "CANCELLED")
 	switch {
-	case back:
-		old.dropParts()
+	case cancelled && old.value(cancelProperty) == "": // by a person, whose word it is
+		return
+	case cancelled:
 		for _, alarm := range event.parts("VALARM") {
 			old.items = append(old.items, item{part: alarm})
 		}
@@ -166,7 +189,7 @@ func (u *update) renew(old, event *part, now state) {
 
 // rewrite puts an event's own properties in place of the old ones.
 func (u *update) rewrite(old, event *part, description string) {
-	sequence, _ := strconv.Atoi(old.value("SEQUENCE"))
+	sequence := nextSequence(old)
 	old.drop(ours...)
 	var lines []item
 	for _, i := range event.items {
@@ -174,7 +197,7 @@ func (u *update) rewrite(old, event *part, description string) {
 			lines = append(lines, i)
 		}
 	}
-	lines = append(lines, newLine("SEQUENCE", strconv.Itoa(sequence+1)), newLine("LAST-MODIFIED", u.stamp.Format(stateTime)), newLine("DESCRIPTION", escape(description)))
+	lines = append(lines, newLine("SEQUENCE", sequence), newLine("LAST-MODIFIED", u.stamp.Format(stateTime)), newLine("DESCRIPTION", escape(description)))
 	old.items = append(lines, old.items...)
 }
 
@@ -187,12 +210,22 @@ func (u *update) cancelRest() {
 		}
 		was, _ := stateOf(e)
 		u.note(Lost, e, was, state{})
-		sequence, _ := strconv.Atoi(e.value("SEQUENCE"))
+		sequence := nextSequence(e)
 		e.drop("DTSTAMP", "SEQUENCE", "STATUS", "LAST-MODIFIED")
-		e.dropParts() // no alarm for what is not
+		e.dropOwnAlarms() // none for what is not
 		stamp := u.stamp.Format(stateTime)
-		e.items = append([]item{newLine("DTSTAMP", stamp), newLine("SEQUENCE", strconv.Itoa(sequence+1)), newLine("LAST-MODIFIED", stamp), newLine("STATUS", "CANCELLED")}, e.items...)
+		e.items = append([]item{newLine("DTSTAMP", stamp), newLine("SEQUENCE", sequence), newLine("LAST-MODIFIED", stamp), newLine("STATUS", "CANCELLED"), newLine(cancelProperty, "1")}, e.items...)
 	}
+}
+
+// nextSequence counts an event's SEQUENCE on, to the greatest there is (RFC 5545,
+// 3.3.8).
+func nextSequence(e *part) string {
+	n, err := strconv.Atoi(e.value("SEQUENCE"))
+	if err != nil || n < 0 {
+		n = 0
+	}
+	return strconv.Itoa(min(n+1, math.MaxInt32))
 }
 
 // userNotes are the lines that the user wrote into an event: its title, if it

@@ -157,7 +157,9 @@ func TestWhatIsNoticed(t *testing.T) {
 		{"a preset by 5.1'", func(w *plan.Window) { w.Round[0].Preset += unit.AngleFromMin(5.1) }, true},
 		{"a body in the best triad", func(w *plan.Window) { w.Triads[0] = w.Triads[1] }, true},
 		{"a body less in the round", func(w *plan.Window) { w.Round = w.Round[1:] }, true},
-		{"the order of the round", func(w *plan.Window) { w.Round[0], w.Round[1] = w.Round[1], w.Round[0] }, false},
+		{"the order of the round", func(w *plan.Window) { w.Round[0], w.Round[1] = w.Round[1], w.Round[0] }, true},
+		{"the round half a minute later", func(w *plan.Window) { w.Round[0].Time = w.Round[0].Time.Add(30 * time.Second) }, false},
+		{"the round a minute later", func(w *plan.Window) { w.Round[0].Time = w.Round[0].Time.Add(time.Minute) }, true},
 		{"a warning", func(w *plan.Window) { w.Warnings = append(w.Warnings, "a cloud has been seen") }, true},
 	} {
 		first := written(t, plain(t, sails), usual)
@@ -251,7 +253,7 @@ func TestUpdateRefuses(t *testing.T) {
 		{"deep", strings.Repeat("BEGIN:VCALENDAR\r\n", 9), "nested deeper than 8"},
 		{"not UTF-8", strings.Replace(good, "SUMMARY:", "SUMMARY:\xff", 1), "not UTF-8"},
 		{"a control character", strings.Replace(good, "SUMMARY:", "SUMMARY:\x00", 1), "control character"},
-		{"huge", good + strings.Repeat(" ", maxCalendarBytes), "over 32 MB"},
+		{"huge", good + strings.Repeat(" ", maxCalendarBytes), "over 16 MB"},
 	} {
 		var b bytes.Buffer
 		_, err := Update(&b, strings.NewReader(c.in), plain(t, sails), later())
@@ -301,4 +303,67 @@ func FuzzUpdate(f *testing.F) {
 			t.Errorf("updated again it changes: %v", changes)
 		}
 	})
+}
+
+// What a person has decided holds: an event he cancelled stays cancelled, the
+// alarm he added to one that is cancelled and comes back is there again, and so
+// is gloam's.
+func TestUpdateLeavesDecisions(t *testing.T) {
+	first := string(written(t, plain(t, sails), usual))
+	i := strings.Index(first, "UID:2027-02-10-evening-stars")
+	struck := first[:i] + "STATUS:CANCELLED\r\n" + first[i:]
+	if same, changes := updated(t, []byte(struck), plain(t, sails), later()); string(same) != struck || len(changes) > 0 {
+		t.Errorf("an event cancelled by hand: %q changed", changes)
+	}
+	mine := "BEGIN:VALARM\r\nACTION:AUDIO\r\nTRIGGER:-PT5M\r\nEND:VALARM\r\n"
+	j := i + strings.Index(first[i:], "BEGIN:VALARM")
+	gone, _ := updated(t, []byte(first[:j]+mine+first[j:]), plain(t, "2027-02-11T00:00:00Z"), later())
+	if e := eventOf(t, gone, "2027-02-10-evening-stars-"); len(e.parts) != 1 || e.parts[0].one(t, "ACTION") != "AUDIO" {
+		t.Errorf("cancelled: %d alarms, want the one added by hand", len(e.parts))
+	}
+	back, _ := updated(t, gone, plain(t, sails), later())
+	if e := eventOf(t, back, "2027-02-10-evening-stars-"); len(e.parts) != 2 || len(e.all("X-GLOAM-CANCELLED")) > 0 {
+		t.Errorf("back: %d alarms, want two", len(e.parts))
+	}
+}
+
+// Without a choice the kinds that the calendar has are kept up.
+func TestUpdateKeepsTheKinds(t *testing.T) {
+	opt := usual
+	opt.Include = []plan.ItemKind{plan.Stars, plan.Daily, plan.Noon, plan.SunLines}
+	first := written(t, plain(t, sails), opt)
+	opt = later()
+	if same, changes := updated(t, first, plain(t, sails), opt); !bytes.Equal(first, same) || len(changes) > 0 {
+		t.Errorf("%q changed", changes)
+	}
+	opt.Include = []plan.ItemKind{plan.Stars}
+	if _, changes := updated(t, first, plain(t, sails), opt); len(changes) < 5 {
+		t.Errorf("with stars alone: %q", changes)
+	}
+}
+
+// Counters and titles out of bounds do no harm (RFC 5545, 3.3.8: integers of 32
+// bits with sign).
+func TestUpdateOfOddValues(t *testing.T) {
+	first := string(written(t, plain(t, sails), usual))
+	for sequence, want := range map[string]string{"2147483647": "2147483647", "-5": "1", "many": "1", "7": "8"} {
+		old := strings.ReplaceAll(first, "SEQUENCE:0", "SEQUENCE:"+sequence)
+		second, _ := updated(t, []byte(old), plain(t, "2027-02-11T00:00:00Z"), later())
+		if got := eventOf(t, second, "2027-02-12-evening-stars-").one(t, "SEQUENCE"); got != want {
+			t.Errorf("SEQUENCE %s becomes %s, want %s", sequence, got, want)
+		}
+	}
+	var b bytes.Buffer
+	changes, err := Update(&b, strings.NewReader(strings.ReplaceAll(first, "SUMMARY:", "SUMMARY:\x1b[31m")), plain(t, "2027-02-11T00:00:00Z"), later())
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range changes {
+		if strings.Contains(c.Title, "\x1b") {
+			t.Errorf("a title with a terminal code: %q", c.Title)
+		}
+	}
+	if _, err := Update(&b, strings.NewReader("BEGIN:VCALENDAR\r\n"+strings.Repeat("A:\r\n", maxLines+1)+"END:VCALENDAR\r\n"), plain(t, sails), later()); err == nil || !strings.Contains(err.Error(), "lines") {
+		t.Errorf("a calendar of too many lines: %v", err)
+	}
 }

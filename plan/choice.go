@@ -98,7 +98,7 @@ func (a information) scale(f float64) information {
 const (
 	climbs = 4
 	tops   = 3
-	looked = 16
+	looked = 12
 )
 
 // choose picks up to n options: the set with the least criterion that can be

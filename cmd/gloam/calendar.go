@@ -43,7 +43,11 @@ func (f *calendarFlags) options(stamp time.Time) (calendars.Options, error) {
 			return opt, usage(fmt.Errorf("--include %w", err))
 		}
 	}
-	opt.Include = f.kinds([]plan.ItemKind{plan.Stars, plan.Noon})
+	usual := []plan.ItemKind{plan.Stars, plan.Noon}
+	if f.update != "" {
+		usual = nil // those that the calendar has
+	}
+	opt.Include = f.kinds(usual)
 	if f.ics != "" && f.update != "" {
 		return opt, usage(errors.New("--ics and --update: one of the two (--update writes the file it reads)"))
 	}
