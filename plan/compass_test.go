@@ -181,3 +181,37 @@ func TestEitherLimb(t *testing.T) {
 		}
 	}
 }
+
+// Latitude by Polaris, USCG examination items with the answers recomputed by IAU
+// SOFA routines: from the latitude found, the computed altitude is the observed
+// one. 0.3', as for a worked latitude.
+func TestPolaris(t *testing.T) {
+	polaris, err := astro.ParseBody("Polaris")
+	if err != nil {
+		t.Fatal(err)
+	}
+	deg := func(d, m float64) unit.Angle { return unit.AngleFromDeg(d + m/60) }
+	for _, c := range []struct {
+		at                        string
+		lat, lon, hs, index, feet float64
+	}{
+		{"1981-05-05T23:53:21Z", 29 + 23.54/60, -66 - 25.7/60, 29 + 7.2/60, 1.5, 56},
+		{"1981-03-15T03:46:42Z", 21 + 49.72/60, -132 - 16.2/60, 22 + 16.8/60, -3.2, 44.9},
+		{"1981-09-24T09:41:24Z", 25 + 37.47/60, 129 + 34.5/60, 25 + 20.8/60, -4.3, 52},
+		{"1981-01-17T02:03:48Z", 36 + 17.81/60, -124 - 36.0/60, 37 + 16.4/60, 1.5, 60},
+	} {
+		sextant := astro.Sextant{EyeM: c.feet * 0.3048, IndexError: unit.AngleFromMin(c.index), TemperatureC: 10, PressureHPa: 1010}
+		place := astro.NewMoment(instant(t, c.at), 51800*time.Millisecond).Place(polaris)
+		ho := sextant.Observed(unit.AngleFromDeg(c.hs), place, astro.Centre)
+		if hc, _ := place.From(unit.AngleFromDeg(c.lat), unit.AngleFromDeg(c.lon)); math.Abs((hc - ho).Min()) > 0.3 {
+			t.Errorf("%s: Hc %.2f', Ho %.2f'", c.at, hc.Min(), ho.Min())
+		}
+	}
+	// 29 Jul 1981, 24° 16.8' N, LHA Aries 238° 48.3': azimuth printed 000.3°,
+	// recomputed 000.4°.
+	m := astro.NewMoment(instant(t, "1981-07-29T08:30:00Z"), 51800*time.Millisecond)
+	lon := deg(238, 48.3) - m.Place(astro.Aries).GHA
+	if _, zn := m.Place(polaris).From(deg(24, 16.8), lon); math.Abs(zn.Deg()-0.35) > 0.1 {
+		t.Errorf("azimuth of Polaris %.2f°", zn.Deg())
+	}
+}

@@ -22,14 +22,14 @@ const (
 var swings = unit.AngleFromDeg(5)
 
 // noon is the Sun's meridian passage: the preset is for the greatest altitude,
-// from which latitude follows.
+// which can be seen, the rule for latitude is for the meridian.
 func (s *sky) noon(e Event, set *Settings) Item {
 	top := s.greatestAltitude(e.Time)
 	item := Item{
 		Kind: Noon, Title: "Noon: Sun on the meridian", Fix: s.passage.At(e.Time),
 		Begin: e.Time.Add(-noonReady), Best: top, End: laterOf(e.Time, top).Add(noonOver),
 	}
-	sun, hc, zn := s.place(astro.Sun, top)
+	sun, hc, zn := s.place(astro.Sun, e.Time)
 	if hc < set.LowestAltitude {
 		word := fmt.Sprintf("The Sun stands %s high, under the limit of %s", dm.Altitude(hc), wholeDegrees(set.LowestAltitude))
 		if hc < 0 {
@@ -45,9 +45,13 @@ func (s *sky) noon(e Event, set *Settings) Item {
 		if apart < 0 {
 			when, apart = "before", -apart
 		}
-		item.Words = append(item.Words, fmt.Sprintf("Greatest altitude %.0f s %s meridian passage: the ship's way and the Sun's", apart.Seconds(), when))
+		word := fmt.Sprintf("Greatest altitude %.0f s %s meridian passage", apart.Seconds(), when)
+		if more := s.altitude(astro.Sun, top) - hc; more.Min() >= 0.05 {
+			word += fmt.Sprintf(", and %.1f' above that of the meridian: take it off", more.Min())
+		}
+		item.Words = append(item.Words, word+" (the ship's way and the Sun's)")
 	}
-	item.Words = append(item.Words, latitudeRule(sun.Dec, hc, zn, s.passage.At(top).Lat))
+	item.Words = append(item.Words, latitudeRule(sun.Dec, hc, zn))
 	if zenith := unit.AngleFromDeg(90) - hc; zenith < swings {
 		item.Words = append(item.Words, s.swing(e.Time, zenith)...)
 	}
@@ -72,10 +76,10 @@ func (s *sky) greatestAltitude(passage time.Time) time.Time {
 	return root(gain, a, b, fa, fb)
 }
 
-// latitudeRule says how latitude follows from the meridian altitude: the zenith
+// latitudeRule says how latitude follows from the altitude on the meridian: the zenith
 // distance is named opposite to the Sun's bearing, and is added to declination
 // of the same name, or the less is taken from the greater.
-func latitudeRule(dec, hc, zn, lat unit.Angle) string {
+func latitudeRule(dec, hc, zn unit.Angle) string {
 	name := func(north bool) string {
 		if north {
 			return "N"

@@ -101,7 +101,7 @@ func (s Settings) Validate() error {
 		{"highest altitude (°)", s.HighestAltitude.Deg(), s.LowestAltitude.Deg(), 90},
 		{"Sun's lower limit (°)", s.LowerSun.Deg(), -18, 0},
 		{"Sun's upper limit (°)", s.UpperSun.Deg(), s.LowerSun.Deg(), 0},
-		{"humidity", s.Humidity, 0.01, 0.99},
+		{"humidity (%)", 100 * s.Humidity, 1, 99},
 		{"telescope's gain (magnitudes)", s.TelescopeGain, 0, 6},
 		{"Sun's altitude for the horizon opposite it (°)", s.HorizonAway.Deg(), -18, 0},
 		{"Sun's altitude for the horizon under it (°)", s.HorizonUnder.Deg(), -18, 0},
@@ -109,7 +109,7 @@ func (s Settings) Validate() error {
 		{"pace (s)", s.Pace.Seconds(), 10, 3600},
 		{"chance of losing a sight", s.Loss, 0, 0.99},
 		{"error of the DR position (NM)", s.DRError, 0.1, 100},
-		{"error of the run (part of it)", s.RunError, 0, 0.5},
+		{"error of the run (%)", 100 * s.RunError, 0, 50},
 		{"angle kept from the Sun (°)", s.SunClearance.Deg(), 0, 90},
 	} {
 		if math.IsNaN(c.Value) || c.Value < c.Min-1e-9 || c.Value > c.Max+1e-9 {

@@ -32,11 +32,11 @@ func newPlan(w world) *cobra.Command {
 	f := &planFlags{}
 	cmd := &cobra.Command{
 		Use:   "plan ROUTE",
-		Short: "Plan the star sights of a passage",
+		Short: "Plan the sights of a passage",
 		Long: "Reads a route (GeoJSON, GPX or RTZ; - for standard input) and prints the\n" +
-			"plan: for each ship's date the twilights, the windows for star sights, the\n" +
-			"triads that give the best fix and what to set on the sextant. Flags win over\n" +
-			"what the file says of schedule, sailing and height of eye.",
+			"plan: for each ship's date the twilights, the day's work, the windows for star\n" +
+			"sights, the triads that give the best fix and what to set on the sextant. Flags\n" +
+			"win over what the file says of schedule, sailing and height of eye.",
 		Example: "  gloam plan route.geojson --depart 2026-11-20T12:00Z --speed 6.5 --ics plan.ics",
 		Args:    func(cmd *cobra.Command, args []string) error { return usage(cobra.ExactArgs(1)(cmd, args)) },
 		RunE: func(cmd *cobra.Command, args []string) error {

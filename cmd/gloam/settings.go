@@ -64,10 +64,10 @@ func (f *settingsFlags) define(cmd *cobra.Command) {
 var settingFlags = map[string]string{
 	"height of eye (m)": "eye", "index error (')": "index-error", "temperature (°C)": "temperature", "pressure (hPa)": "pressure",
 	"sight error (')": "sight-error", "common error (')": "common-error", "lowest altitude (°)": "lowest", "highest altitude (°)": "highest",
-	"Sun's lower limit (°)": "sun-lower", "Sun's upper limit (°)": "sun-upper", "humidity": "humidity", "telescope's gain (magnitudes)": "telescope-gain",
+	"Sun's lower limit (°)": "sun-lower", "Sun's upper limit (°)": "sun-upper", "humidity (%)": "humidity", "telescope's gain (magnitudes)": "telescope-gain",
 	"Sun's altitude for the horizon opposite it (°)": "horizon-away", "Sun's altitude for the horizon under it (°)": "horizon-under",
 	"sights": "sights", "pace (s)": "pace", "chance of losing a sight": "loss", "error of the DR position (NM)": "dr-error",
-	"error of the run (part of it)": "run-error", "angle kept from the Sun (°)": "sun-clearance",
+	"error of the run (%)": "run-error", "angle kept from the Sun (°)": "sun-clearance",
 }
 
 // settingError tells which flag sets what is out of range.
