@@ -23,7 +23,7 @@ func BenchmarkWrite(b *testing.B) {
 }
 
 // BenchmarkReplanAndUpdate plans a voyage of 60 days anew, half a day late, and
-// brings its calendar up to date.
+// brings its calendar of star windows up to date.
 func BenchmarkReplanAndUpdate(b *testing.B) {
 	first := longVoyage(b, "2027-01-10T12:00:00Z")
 	old := written(b, planned(b, first), usual)
@@ -55,7 +55,9 @@ func longVoyage(b *testing.B, departure string) *track.Passage {
 
 func planned(b *testing.B, p *track.Passage) *plan.Plan {
 	b.Helper()
-	made, err := plan.New(p, plan.DefaultSettings())
+	set := plan.DefaultSettings()
+	set.Kinds = []plan.ItemKind{plan.Stars}
+	made, err := plan.New(p, set)
 	if err != nil {
 		b.Fatal(err)
 	}

@@ -51,7 +51,7 @@ func BenchmarkPlan150Days(b *testing.B) { benchmarkPlan(b, 150, DefaultSettings(
 // Everything included, moonlit windows too.
 func BenchmarkPlan30DaysWhole(b *testing.B) {
 	set := DefaultSettings()
-	set.Moonlit = true
+	set.Kinds = ItemKinds
 	benchmarkPlan(b, 30, set)
 }
 
@@ -59,7 +59,14 @@ func BenchmarkPlan30DaysWhole(b *testing.B) {
 // seen, and all triads.
 func BenchmarkTriads15Days(b *testing.B) {
 	set := DefaultSettings()
-	set.Sights = 1
+	set.Sights, set.Kinds = 1, []ItemKind{Stars}
+	benchmarkPlan(b, 15, set)
+}
+
+// Star windows with their rounds, and nothing of the day's work.
+func BenchmarkStars15Days(b *testing.B) {
+	set := DefaultSettings()
+	set.Kinds = []ItemKind{Stars}
 	benchmarkPlan(b, 15, set)
 }
 

@@ -64,6 +64,15 @@ func (s *sky) compassItem(title string, b astro.Body, t time.Time, ready time.Du
 	return item
 }
 
+// compass are the day's checks of the compass, by the Sun and in star windows.
+func (s *sky) compass(d *Day, t *sunTable, clock *track.Clock) []Item {
+	items := append(s.amplitudes(d), t.lowSun(clock)...)
+	for i := range d.Windows {
+		items = append(items, s.lowStar(&d.Windows[i])...)
+	}
+	return items
+}
+
 // amplitudes are a day's checks by the Sun on the celestial horizon.
 func (s *sky) amplitudes(d *Day) []Item {
 	var items []Item

@@ -145,7 +145,7 @@ func TestMoonlit(t *testing.T) {
 	if items := itemsOf(planOf(t, passage, set), Moonlit); len(items) > 0 {
 		t.Errorf("%d moonlit windows unasked", len(items))
 	}
-	set.Moonlit = true
+	set.Kinds = ItemKinds
 	s := newSky(passage, astro.DeltaT)
 	items := itemsOf(planOf(t, passage, set), Moonlit)
 	if len(items) < 2 {

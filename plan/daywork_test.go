@@ -26,7 +26,7 @@ func oneDay(tb testing.TB, rng *rand.Rand, knots float64) (*track.Passage, *Plan
 		tb.Fatal(err)
 	}
 	set := DefaultSettings()
-	set.Moonlit = true
+	set.Kinds = ItemKinds
 	return p, planOf(tb, p, set)
 }
 

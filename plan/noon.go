@@ -21,6 +21,16 @@ const (
 // swings is how near to the zenith the Sun's bearing swings fast.
 var swings = unit.AngleFromDeg(5)
 
+// noons are the day's meridian passages of the Sun.
+func (s *sky) noons(d *Day, set *Settings) (items []Item) {
+	for _, e := range d.Events {
+		if e.Kind == MeridianPassage {
+			items = append(items, s.noon(e, set))
+		}
+	}
+	return items
+}
+
 // noon is the Sun's meridian passage: the preset is for the greatest altitude,
 // which can be seen, the rule for latitude is for the meridian.
 func (s *sky) noon(e Event, set *Settings) Item {

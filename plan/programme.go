@@ -65,7 +65,9 @@ type Item struct {
 
 // programmes gives each day its programme.
 func (s *sky) programmes(days []Day, set Settings, clock *track.Clock) {
-	s.sunCrossings(0) // searched once, before the days ask for it at the same time
+	if slices.Contains(set.Kinds, Compass) {
+		s.sunCrossings(0) // searched once, before the days ask for it at the same time
+	}
 	var group errgroup.Group
 	group.SetLimit(runtime.GOMAXPROCS(0))
 	for i := range days {
@@ -78,30 +80,37 @@ func (s *sky) programmes(days []Day, set Settings, clock *track.Clock) {
 	nameItems(days)
 }
 
-// programme lists what a day has, in order of time.
+// programme lists what a day has of the kinds asked for, in order of time.
 func (s *sky) programme(d *Day, set *Settings, clock *track.Clock) []Item {
-	items := s.daily(d, clock)
-	for i := range d.Windows {
-		w := &d.Windows[i]
-		items = append(items, w.item())
-		items = append(items, s.lowStar(w)...)
-	}
-	for _, e := range d.Events {
-		if e.Kind == MeridianPassage {
-			items = append(items, s.noon(e, set))
-		}
-	}
 	t := s.sunTable(d, set)
 	defer t.free()
-	items = append(items, t.sunLines(d, clock)...)
-	items = append(items, t.moonLines()...)
-	items = append(items, t.planetLines()...)
-	items = append(items, s.amplitudes(d)...)
-	items = append(items, t.lowSun(clock)...)
-	if set.Moonlit {
-		items = append(items, t.moonlit()...)
+	var items []Item
+	for _, part := range []struct {
+		kind ItemKind
+		find func() []Item
+	}{
+		{Daily, func() []Item { return s.daily(d, clock) }},
+		{Stars, d.stars},
+		{Noon, func() []Item { return s.noons(d, set) }},
+		{SunLines, func() []Item { return t.sunLines(d, clock) }},
+		{MoonLines, t.moonLines},
+		{PlanetLines, t.planetLines},
+		{Compass, func() []Item { return s.compass(d, t, clock) }},
+		{Moonlit, t.moonlit},
+	} {
+		if slices.Contains(set.Kinds, part.kind) {
+			items = append(items, part.find()...)
+		}
 	}
 	slices.SortStableFunc(items, func(a, b Item) int { return a.Best.Compare(b.Best) })
+	return items
+}
+
+// stars are the day's star windows.
+func (d *Day) stars() (items []Item) {
+	for i := range d.Windows {
+		items = append(items, d.Windows[i].item())
+	}
 	return items
 }
 

@@ -39,7 +39,7 @@ type Settings struct {
 	// The day's work.
 	RunError     float64    // standard error of a run, as a part of its length, 0 to 0.5
 	SunClearance unit.Angle // how far from the Sun a telescope may point, 0° to 90°
-	Moonlit      bool       // look for horizons under the Moon at night
+	Kinds        []ItemKind // what the programme is to have
 
 	DeltaT   func(time.Time) time.Duration // TT - UT1
 	ShipTime track.ShipTime                // how the clock is kept; nil for nautical zones
@@ -72,6 +72,7 @@ func DefaultSettings() Settings {
 		DRError:         5,
 		RunError:        0.05,
 		SunClearance:    unit.AngleFromDeg(20),
+		Kinds:           UsualKinds,
 		DeltaT:          astro.DeltaT,
 	}
 }

@@ -5,7 +5,6 @@ import (
 	"fmt"
 	"io"
 	"os"
-	"slices"
 	"strconv"
 	"time"
 
@@ -98,7 +97,10 @@ func (f *planFlags) plan(file string, r *track.Route) (*plan.Plan, error) {
 		return nil, err
 	}
 	set.ShipTime = rule
-	set.Moonlit = slices.Contains(f.kinds(nil), plan.Moonlit)
+	set.Kinds = f.kinds(plan.UsualKinds)
+	if f.update != "" && f.included == nil {
+		set.Kinds = plan.ItemKinds // the calendar may have any
+	}
 	p, err := plan.New(passage, set)
 	if err != nil {
 		return nil, settingError(err)

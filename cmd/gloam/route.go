@@ -75,6 +75,7 @@ func (f *routeFlags) write(b *bytes.Buffer, p *track.Passage, eyeM float64) erro
 	if err != nil {
 		return err
 	}
+	set.Kinds = []plan.ItemKind{plan.Stars}
 	pl, err := plan.New(p, set)
 	if err != nil {
 		return settingError(err)

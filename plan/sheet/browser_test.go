@@ -209,7 +209,7 @@ func randomVoyage(t testing.TB, rng *rand.Rand) *plan.Plan {
 		t.Fatal(err)
 	}
 	set := plan.DefaultSettings()
-	set.Moonlit = true
+	set.Kinds = plan.ItemKinds
 	if rng.IntN(2) == 0 {
 		arc, err := plan.ParseArc("180-230")
 		if err != nil {
