@@ -63,8 +63,6 @@ func (s *sky) days(clock *track.Clock, set Settings, events []Event, windows []W
 		for len(windows) > 0 && (last || windows[0].Begin.Before(day.To)) {
 			day.Windows, windows = append(day.Windows, windows[0]), windows[1:]
 		}
-		day.Moon = s.moonPhase(day.From, day.To)
-		day.Light, day.MoonUp = s.light(&day), s.moonUp(&day)
 		if len(day.Windows) == 0 {
 			day.NoWindow = s.noWindow(day, set, clock, every)
 			day.Remains = s.remains(day, set)

@@ -63,7 +63,7 @@ type Item struct {
 	Words            []string     // what to do, what comes of it, what to mind
 }
 
-// programmes gives each day its programme.
+// programmes gives each day its light, its Moon and its programme.
 func (s *sky) programmes(days []Day, set Settings, clock *track.Clock) {
 	if slices.Contains(set.Kinds, Compass) {
 		s.sunCrossings(0) // searched once, before the days ask for it at the same time
@@ -72,7 +72,9 @@ func (s *sky) programmes(days []Day, set Settings, clock *track.Clock) {
 	group.SetLimit(runtime.GOMAXPROCS(0))
 	for i := range days {
 		group.Go(func() error {
-			days[i].Programme = s.programme(&days[i], &set, clock)
+			d := &days[i]
+			d.Moon, d.Light, d.MoonUp = s.moonPhase(d.From, d.To), s.light(d), s.moonUp(d)
+			d.Programme = s.programme(d, &set, clock)
 			return nil
 		})
 	}
