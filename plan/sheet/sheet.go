@@ -83,7 +83,6 @@ type itemView struct {
 
 type sightRow struct {
 	Number, Ship, UTC, Body, Preset, Zn, Bow, Rate, Late string
-	Chosen                                               bool // of the three that matter most
 }
 
 // windowView is a star window.
@@ -226,7 +225,6 @@ func (b *builder) window(w *plan.Window, id string) windowView {
 	for i := range w.Round {
 		row := b.sight(&w.Round[i])
 		row.Number = fmt.Sprint(i + 1)
-		row.Chosen = slices.ContainsFunc(three, func(r plan.RoundSight) bool { return r.Body == w.Round[i].Body })
 		v.Round = append(v.Round, row)
 	}
 	if x := w.RoundFix.Covariance.ExpectedError(); len(w.Round) > 1 && !math.IsInf(x, 0) {
