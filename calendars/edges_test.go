@@ -80,7 +80,7 @@ func TestSummaryOfFewBodies(t *testing.T) {
 			t.Errorf("%d bodies: summary %q, want %q in it", n, got, want)
 		}
 		text := unescape(e.one(t, "DESCRIPTION"))
-		if !strings.Contains(text, "\n"+capital(want)) {
+		if !strings.Contains(text, "\n"+plan.Capital(want)) {
 			t.Errorf("%d bodies: no %q in\n%s", n, want, text)
 		}
 		for _, c := range w.Bodies {
@@ -116,7 +116,7 @@ func TestDescriptionTimes(t *testing.T) {
 		}
 		want := []string{"Begin " + both(w.Begin), "Best  " + both(w.Best), "End   " + both(w.End)}
 		for _, ev := range p.Events() {
-			line := capital(ev.Kind.Words()) + " " + both(ev.Time)
+			line := plan.Capital(ev.Kind.Words()) + " " + both(ev.Time)
 			near := !ev.Time.Before(w.Begin.Add(-2*time.Hour)) && !ev.Time.After(w.End.Add(2*time.Hour))
 			if near {
 				want = append(want, line)

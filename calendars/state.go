@@ -40,6 +40,9 @@ func (e *entry) state() state {
 	if e.item == nil {
 		return s
 	}
+	if e.allDay { // its times stand in the text alone
+		s.words = shortHash(e.description)
+	}
 	s.best = whole(e.item.Best)
 	if w := e.item.Window; w != nil && len(w.Triads) > 0 {
 		s.triad = w.Triads[0].Names()

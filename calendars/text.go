@@ -109,18 +109,16 @@ const nearby = 2 * time.Hour
 // sun lists the events close to the window.
 func (t *text) sun(w *plan.Window) {
 	for _, e := range t.plan.EventsBetween(w.Begin.Add(-nearby), w.End.Add(nearby)) {
-		t.line("%s %s", capital(e.Kind.Words()), t.times(e.Time))
+		t.line("%s %s", plan.Capital(e.Kind.Words()), t.times(e.Time))
 	}
 }
-
-func capital(words string) string { return strings.ToUpper(words[:1]) + words[1:] }
 
 // bodies lists the best triad and what to set for the bodies of all triads
 // listed, or for all there are.
 func (t *text) bodies(w *plan.Window) {
 	t.line("")
 	if c := w.Comment(); c != "" {
-		t.line("%s", capital(c))
+		t.line("%s", plan.Capital(c))
 	}
 	if len(w.Triads) > 0 {
 		best := w.Triads[0]

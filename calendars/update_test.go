@@ -342,6 +342,29 @@ func TestUpdateKeepsTheKinds(t *testing.T) {
 	}
 }
 
+// The times of a whole day's event stand in its text alone, and are kept true.
+func TestUpdateOfDailyTimes(t *testing.T) {
+	opt := usual
+	opt.Include = []plan.ItemKind{plan.Daily}
+	first := written(t, plain(t, sails), opt)
+	late := plain(t, "2027-02-10T20:00:00Z")
+	opt.Stamp = later().Stamp
+	second, changes := updated(t, first, late, opt)
+	if len(changes) < 3 {
+		t.Errorf("changes %q, want some of every day", changes)
+	}
+	for _, e := range late.Events() {
+		if e.Kind != plan.Sunset {
+			continue
+		}
+		at := plan.Minute(e.Time, late.Clock.At)
+		day := eventOf(t, second, late.Clock.Day(e.Time).Date.Format(time.DateOnly)+"-daily-")
+		if text := unescape(day.one(t, "DESCRIPTION")); !strings.Contains(text, at.Format("15:04")+" UTC sunset") {
+			t.Errorf("sunset at %s is not in %q", at.Format("15:04"), text)
+		}
+	}
+}
+
 // Counters and titles out of bounds do no harm (RFC 5545, 3.3.8: integers of 32
 // bits with sign).
 func TestUpdateOfOddValues(t *testing.T) {

@@ -131,14 +131,15 @@ func (w *Window) item() Item {
 // Title is the window's kind with the bodies of the best triad, or with what
 // the window lacks: "Evening stars: Rigel, Schedar, Fomalhaut".
 func (w *Window) Title() string {
-	kind := capital(w.Kind.Words())
+	kind := Capital(w.Kind.Words())
 	if len(w.Triads) > 0 {
 		return kind + ": " + w.Triads[0].Names()
 	}
 	return kind + ": " + w.Comment()
 }
 
-func capital(words string) string { return strings.ToUpper(words[:1]) + words[1:] }
+// Capital begins words with a capital letter; they begin with a letter of ASCII.
+func Capital(words string) string { return strings.ToUpper(words[:1]) + words[1:] }
 
 // daily is the day's rising, setting and twilights, where it has any.
 func (s *sky) daily(d *Day, clock *track.Clock) []Item {
